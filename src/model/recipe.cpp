@@ -1,0 +1,19 @@
+// SPDX-License-Identifier: Apache-2.0
+#include "model/recipe.hpp"
+
+#include <algorithm>
+
+namespace bandwright {
+
+AcceptCriteria AcceptRecipe::for_component(std::string_view name) const {
+  AcceptCriteria criteria = all;
+  const auto own = std::find_if(per_component.begin(), per_component.end(),
+                                [&](const ComponentAccept& accept) { return accept.component == name; });
+  if (own == per_component.end()) return criteria;
+  AcceptCriteria::describe([&](std::string_view, auto member, const Bounds&, std::string_view) {
+    if (own->criteria.*member) criteria.*member = own->criteria.*member;
+  });
+  return criteria;
+}
+
+}  // namespace bandwright
