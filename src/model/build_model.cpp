@@ -49,7 +49,8 @@ Candidates try_all_factors(const CalibrationRecipe& recipe, TrainingData data, c
   c.fitted = project_path(c.full, c.data.spectra);
   c.held_out = refit_folds(recipe, c.data, folds, pool, progress);
   c.squared_errors = squared_errors_by_sample(c.held_out, c.data);
-  const Index with_freedom = c.data.samples() - center_df(recipe.scaling);
+  // One degree of freedom must be left, or SEC and the intervals do not exist.
+  const Index with_freedom = c.data.samples() - center_df(recipe.scaling) - 1;
   c.factors = std::min({c.full.factors(), c.held_out.factors(), with_freedom});
   if (c.held_out.row.empty() || c.factors < 1)
     throw Error(ErrorKind::Numerical, "no sample is held out by the cross-validation");
@@ -116,6 +117,25 @@ CalibrationStatistics statistics_of(const Candidates& c, const CurvePoint& chose
   s.secv = std::sqrt(std::max(0.0, (chosen.press - m * chosen.bias_cv * chosen.bias_cv) / (m - 1.0)));
   s.r2_cv = 1.0 - chosen.press * (n / m) / spread;
   return s;
+}
+
+/// Refuses by name a spectrum that the chain cannot treat, before folds know it by a number only.
+void check_pretreatment(const CalibrationRecipe& recipe, const MatchedStandards& matched,
+                        const std::vector<Index>& used_rows, const SpectraSet& spectra) {
+  const PretreatmentChain chain(recipe.steps, recipe.windows, spectra.axis);
+  for (const Index used : used_rows) {
+    const Index row = matched.spectrum_rows[static_cast<std::size_t>(used)];
+    try {
+      static_cast<void>(chain.apply(spectra.values.row(row)));
+    } catch (const Error& error) {
+      const Origin& origin = spectra.origins[static_cast<std::size_t>(row)];
+      throw Error(error.kind(), error.message(),
+                  {.file = origin.file,
+                   .line = origin.line,
+                   .field = fmt::format("spectrum \"{}\"", spectra.ids[static_cast<std::size_t>(row)]),
+                   .hint = "leave it out with [[exclude]]"});
+    }
+  }
 }
 
 StandardsEvidence evidence_of(const Candidates& c, const MatchedStandards& matched, const SpectraSet& spectra,
@@ -210,6 +230,7 @@ ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& aske
   if (data.samples() < kFewestSamples)
     throw Error(ErrorKind::Input, fmt::format("{} standards have a reference value; at least {} are needed", data.samples(),
                                               kFewestSamples));
+  check_pretreatment(component.recipe, matched, used_rows, spectra);
   Candidates candidates = try_all_factors(component.recipe, std::move(data), folds, pool, progress);
   candidates.used_rows = std::move(used_rows);
 

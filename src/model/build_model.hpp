@@ -23,7 +23,7 @@ using BuildProgress = std::function<void(const std::string& component, std::size
 /// without a row, take no part and are named in a warning.
 /// Throws Error(Usage) if windows, steps or folds do not fit the data, Error(Input) if an excluded
 /// sample or spectrum does not exist or too few standards are left, Error(Numerical) if a fit is
-/// impossible; the field names the component.
+/// impossible; the field names the component, or the spectrum that cannot be pretreated.
 /// Results do not depend on the number of workers, bit for bit.
 [[nodiscard]] Model build_model(const Recipe& recipe, const SpectraSet& spectra, const ReferenceTable& reference,
                                 WorkerPool& pool, const BuildProgress& progress = {});

@@ -55,33 +55,9 @@ factors = "minimum"
 max_factors = 6
 )";
 
-Model model_of_plan(std::string_view plan_text, std::size_t standards) {
-  const OpenData& data = beerlambert4();
-  const Plan plan = parse_plan(plan_text, "plan.toml");
-  const std::vector<Index> with_spectra(data.training.begin(),
-                                        data.training.begin() + static_cast<std::ptrdiff_t>(standards));
-  std::vector<Index> with_reference = with_spectra;
-  with_reference.push_back(data.test.front());  // without spectrum: gives a warning
-  WorkerPool pool(1);
-  Model model =
-      build_model(plan.recipe, data.spectra_set(with_spectra), data.reference_table(with_reference), pool);
-  model.provenance = {.plan_name = "plan.toml",
-                      .plan_text = std::string(plan_text),
-                      .inputs = {{"spectra", "spectra.csv", sha256("spectra")},
-                                 {"reference values", "reference.csv", sha256("reference")}},
-                      .id = {},
-                      .written_by = "0.1.0"};
-  model.provenance.id = model_id(model.provenance);
-  return model;
-}
+namespace {
 
-const Model& sample_model() {
-  static const Model model = model_of_plan(kSamplePlan);
-  return model;
-}
-
-const Model& tiny_model() {
-  static const Model model = model_of_plan(R"([standards]
+constexpr std::string_view kTinyPlan = R"([standards]
 spectra = ["s.csv"]
 reference = "r.csv"
 [[component]]
@@ -94,8 +70,54 @@ from = 1700
 to = 1720
 [regression]
 max_factors = 2
-)",
-                                           8);
+)";
+
+Provenance provenance_of(std::string_view plan_text) {
+  Provenance provenance{.plan_name = "plan.toml",
+                        .plan_text = std::string(plan_text),
+                        .inputs = {{"spectra", "spectra.csv", sha256("spectra")},
+                                   {"reference values", "reference.csv", sha256("reference")}},
+                        .id = {},
+                        .written_by = "0.1.0"};
+  provenance.id = model_id(provenance);
+  return provenance;
+}
+
+/// The points first .. first + count - 1 alone.
+SpectraSet cropped(SpectraSet spectra, Index first, Index count) {
+  spectra.axis = Axis(spectra.axis.positions().segment(first, count), spectra.axis.unit());
+  spectra.values = Matrix(spectra.values.middleCols(first, count));
+  return spectra;
+}
+
+}  // namespace
+
+Model model_of(std::string_view plan_text, const SpectraSet& spectra, const ReferenceTable& reference) {
+  WorkerPool pool(1);
+  Model model = build_model(parse_plan(plan_text, "plan.toml").recipe, spectra, reference, pool);
+  model.provenance = provenance_of(plan_text);
+  return model;
+}
+
+Model build_sample_model() {
+  const OpenData& data = beerlambert4();
+  std::vector<Index> with_reference = data.training;
+  with_reference.push_back(data.test.front());  // without spectrum: gives a warning
+  return model_of(kSamplePlan, data.spectra_set(data.training), data.reference_table(with_reference));
+}
+
+const Model& sample_model() {
+  static const Model model = build_sample_model();
+  return model;
+}
+
+const Model& tiny_model() {
+  static const Model model = [] {
+    const OpenData& data = beerlambert4();
+    const std::vector<Index> eight(data.training.begin(), data.training.begin() + 8);
+    const Index at_1728 = 18;
+    return model_of(kTinyPlan, cropped(data.spectra_set(eight), at_1728, 10), data.reference_table(eight));
+  }();
   return model;
 }
 

@@ -4,6 +4,8 @@
 #include <string_view>
 
 #include "model/model.hpp"
+#include "spectra/reference_table.hpp"
+#include "spectra/spectra_set.hpp"
 
 /// Models built from beerlambert4 for tests of what stores and applies models.
 
@@ -12,11 +14,14 @@ namespace bandwright {
 /// Two components, two windows with an exception, a derivative and SNV, unit variance for one component.
 extern const std::string_view kSamplePlan;
 [[nodiscard]] const Model& sample_model();
+/// The same, built again.
+[[nodiscard]] Model build_sample_model();
 
-/// One component, one factor, six points, eight standards: a short file.
+/// One component, one factor, six of ten points, eight standards: a short file.
 [[nodiscard]] const Model& tiny_model();
 
-/// A model of the plan on the first training samples of beerlambert4, with provenance.
-[[nodiscard]] Model model_of_plan(std::string_view plan_text, std::size_t standards = 25);
+/// A model built by the plan, with provenance of made-up files.
+[[nodiscard]] Model model_of(std::string_view plan_text, const SpectraSet& spectra,
+                             const ReferenceTable& reference);
 
 }  // namespace bandwright

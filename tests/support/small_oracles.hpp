@@ -48,16 +48,24 @@ inline Matrix coefficients() {
   return b;
 }
 
-inline Vector of(double a, double b, double c, double d, double e) { return (Vector(5) << a, b, c, d, e).finished(); }
+inline Vector of(double a, double b, double c, double d, double e) {
+  return (Vector(5) << a, b, c, d, e).finished();
+}
 inline Vector of(double a, double b, double c, double d, double e, double f, double g, double h) {
   return (Vector(8) << a, b, c, d, e, f, g, h).finished();
 }
 
 /// One value for each of 1 .. 5 factors.
-inline Vector intercepts() { return of(-1.83804375584, -1.64755483938, -1.52378627625, -1.25817748187, -1.16764550265); }
-inline Vector sse() { return of(0.331471664322, 0.0192101777579, 0.0128014765801, 0.0109365203186, 0.0101402116402); }
+inline Vector intercepts() {
+  return of(-1.83804375584, -1.64755483938, -1.52378627625, -1.25817748187, -1.16764550265);
+}
+inline Vector sse() {
+  return of(0.331471664322, 0.0192101777579, 0.0128014765801, 0.0109365203186, 0.0101402116402);
+}
 inline Vector sec() { return of(0.235043139, 0.0619841556, 0.0565718052, 0.0603780322, 0.0712046755); }
-inline Vector press() { return of(0.516796566808, 0.0652249778120, 0.0593650013855, 0.0996523495738, 15.1222968298); }
+inline Vector press() {
+  return of(0.516796566808, 0.0652249778120, 0.0593650013855, 0.0996523495738, 15.1222968298);
+}
 inline Vector rmsecv() { return of(0.2541644563, 0.09029464118, 0.08614305064, 0.1116088872, 1.374877123); }
 inline Vector coefficient_norms() { return of(0.12281, 0.17451, 0.19173, 0.21962, 0.24519); }
 
@@ -72,7 +80,8 @@ inline Vector leverage_2() {  // with the 1/n of the mean
   return of(0.24773443, 0.44812757, 0.45630968, 0.53071892, 0.44103592, 0.14295402, 0.21877110, 0.51434835);
 }
 inline Vector q_2() {
-  return of(0.38484431, 0.033683088, 0.039487646, 0.0055307871, 0.062627458, 0.95469969, 0.32769341, 0.17244698);
+  return of(0.38484431, 0.033683088, 0.039487646, 0.0055307871, 0.062627458, 0.95469969, 0.32769341,
+            0.17244698);
 }
 
 }  // namespace bandwright::eight_by_five

@@ -33,9 +33,11 @@ OpenData load(const std::string& folder, AxisUnit unit) {
   data.folder = folder;
   const NumberTable spectra = read_number_table(folder + "/spectra.csv", true);
   const NumberTable reference = read_number_table(folder + "/reference.csv", true);
-  if (spectra.names != reference.names) throw std::runtime_error(folder + ": spectra and reference differ in order");
+  if (spectra.names != reference.names)
+    throw std::runtime_error(folder + ": spectra and reference differ in order");
   Vector positions(static_cast<Index>(spectra.headings.size()));
-  for (Index j = 0; j < positions.size(); ++j) positions[j] = to_number(spectra.headings[static_cast<std::size_t>(j)]);
+  for (Index j = 0; j < positions.size(); ++j)
+    positions[j] = to_number(spectra.headings[static_cast<std::size_t>(j)]);
   data.axis = Axis(positions, unit);
   data.samples = spectra.names;
   data.spectra = spectra.values;
@@ -142,7 +144,8 @@ ReferenceResults OpenData::results(const std::string& name) const {
 }
 
 SpectraSet OpenData::spectra_set(const std::vector<Index>& rows) const {
-  SpectraSet set{.axis = axis, .ordinate = Ordinate::Absorbance, .ids = {}, .origins = {}, .values = spectra_at(rows)};
+  SpectraSet set{
+      .axis = axis, .ordinate = Ordinate::Absorbance, .ids = {}, .origins = {}, .values = spectra_at(rows)};
   for (const Index row : rows) {
     set.ids.push_back(samples[static_cast<std::size_t>(row)]);
     set.origins.push_back({folder + "/spectra.csv", static_cast<std::size_t>(row) + 2});
