@@ -10,6 +10,7 @@
 
 #include "model/interval.hpp"
 #include "numerics/distributions.hpp"
+#include "numerics/sums.hpp"
 
 namespace bandwright {
 namespace {
@@ -45,6 +46,16 @@ bool covers(const Model& model, const ComponentModel& component, const Component
   return std::abs(reference - result.value) <= half_width;
 }
 
+/// Standard deviation of the reference value in this row of the table, by numbers or by column.
+double reference_error_of_row(const LabError& lab_error, const ReferenceTable& reference, Index row, double value) {
+  if (lab_error.column.empty()) return reference_error(lab_error, value);
+  const double error = reference.column(lab_error.column).values[row];
+  if (std::isfinite(error) && error >= 0.0) return error;
+  const Origin& origin = reference.origins[static_cast<std::size_t>(row)];
+  throw Error(ErrorKind::Input, "the standard deviation of the reference value is missing or negative",
+              {.file = origin.file, .line = origin.line, .field = fmt::format("column \"{}\"", lab_error.column), .hint = {}});
+}
+
 void judge_criteria(ComponentValidation& component, const AcceptCriteria& accept) {
   const auto at_most = [&](const char* key, const char* what, std::optional<double> limit, double value) {
     if (limit) component.criteria.push_back({key, what, value, *limit, value <= *limit});
@@ -74,6 +85,8 @@ ComponentValidation validate_component(const Model& model, std::size_t c, const 
   out.unit = fitted.unit;
   std::vector<double> reference_values;
   std::vector<double> predicted_values;
+  std::vector<double> reference_errors;
+  const LabError& lab_error = model.asked(fitted).lab_error;
   Index covered = 0;
   for (std::size_t row = 0; row < reference.samples.size(); ++row) {
     const double value = column.values[static_cast<Index>(row)];
@@ -83,6 +96,7 @@ ComponentValidation validate_component(const Model& model, std::size_t c, const 
     out.samples.push_back(reference.samples[row]);
     reference_values.push_back(value);
     predicted_values.push_back(result.value);
+    reference_errors.push_back(reference_error_of_row(lab_error, reference, static_cast<Index>(row), value));
     if (covers(model, fitted, result, value)) ++covered;
     if (!result.flags.empty()) ++out.flagged;
   }
@@ -92,6 +106,9 @@ ComponentValidation validate_component(const Model& model, std::size_t c, const 
   out.sep_limit = sep_limit(fitted.statistics.sec, fitted.statistics.sec_df, out.errors.n);
   out.coverage = static_cast<double>(covered) / static_cast<double>(out.errors.n);
   out.range_share = (out.errors.reference_max - out.errors.reference_min) / (fitted.limits.value_max - fitted.limits.value_min);
+  if (lab_error.given())
+    out.rmsep_corrected = corrected_rmsep(
+        out.errors.rmsep, Eigen::Map<const Vector>(reference_errors.data(), static_cast<Index>(reference_errors.size())));
   judge_criteria(out, model.recipe.accept.for_component(fitted.name));
   return out;
 }
@@ -163,6 +180,11 @@ Validation validate(const Model& model, const SpectraSet& spectra, const Referen
     out.warnings.push_back({fmt::format("{} samples have no row in the reference table and are not tested, the first is \"{}\"",
                                         without_row.size(), without_row.front()), {}, 0});
   return out;
+}
+
+double corrected_rmsep(double rmsep, const VectorView& reference_errors) {
+  const double lab = squared_norm(values_of(reference_errors)) / static_cast<double>(reference_errors.size());
+  return std::sqrt(std::max(0.0, rmsep * rmsep - lab));
 }
 
 IndependentError independent_error(const ComponentValidation& component, std::string set_digest) {

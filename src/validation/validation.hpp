@@ -37,6 +37,7 @@ struct ComponentValidation {
   double coverage = 0.0;
   double range_share = 0.0;          ///< range of the set / calibrated range
   std::optional<double> equivalence_p;  ///< when the plan has a bias margin
+  std::optional<double> rmsep_corrected;  ///< without the reference method's error, when lab_error is given
   Index flagged = 0;                 ///< samples with a flag; they are counted in, not left out
   std::vector<CriterionOutcome> criteria;
 
@@ -52,6 +53,10 @@ struct Validation {
   /// Every criterion of every component met; empty when the plan has no criterion at all.
   [[nodiscard]] std::optional<bool> passed() const;
 };
+
+/// RMSEP less the error of the reference method: sqrt(RMSEP^2 - mean s_ref^2), 0 if that is negative.
+/// Source: Faber and Kowalski, Appl. Spectrosc. 51 (1997) 660 (principle).
+[[nodiscard]] double corrected_rmsep(double rmsep, const VectorView& reference_errors);
 
 /// Tests a model on samples that had no part in it. Statistics are over samples (means of
 /// replicates).

@@ -61,7 +61,7 @@ factors = "minimum"
 
 [[component]]
 name = "1-butanol"
-lab_error = "butanol_sd"
+lab_error = 0.05
 
 [[window]]
 name   = "carbonyl"
@@ -159,7 +159,15 @@ TEST(Plan, ComponentsArriveAsWritten) {
   EXPECT_EQ(std::get<FactorRule>(*water.factors), FactorRule::Minimum);
   EXPECT_FALSE(water.steps.has_value());
   EXPECT_FALSE(water.spec_max.has_value());
-  EXPECT_EQ(plan.recipe.components[2].lab_error.column, "butanol_sd");
+  EXPECT_EQ(plan.recipe.components[2].lab_error.absolute, 0.05);
+}
+
+TEST(Plan, LabErrorMayBeAColumnOfTheReferenceTable) {
+  const Plan plan = parse_plan(
+      "[standards]\nspectra = [\"a.csv\"]\nreference = \"r.csv\"\n[[component]]\nname = \"water\"\nlab_error = \"water_sd\"\n",
+      "plan.toml");
+  EXPECT_EQ(plan.recipe.components[0].lab_error.column, "water_sd");
+  EXPECT_TRUE(plan.recipe.components[0].lab_error.given());
 }
 
 TEST(Plan, WindowsAndStepsArriveAsWritten) {
