@@ -37,8 +37,7 @@ std::optional<double> parse_number(std::string_view text) {
   }
   double value = 0.0;
   const auto [end, fault] = std::from_chars(text.data(), text.data() + text.size(), value);
-  if (fault != std::errc{} || end != text.data() + text.size() || !std::isfinite(value))
-    return std::nullopt;
+  if (fault != std::errc{} || end != text.data() + text.size() || !std::isfinite(value)) return std::nullopt;
   return value;
 }
 
@@ -60,6 +59,10 @@ std::string significant_text(double value, int digits) {
   std::from_chars(scientific.data() + mark + sign, scientific.data() + scientific.size(), exponent);
   if (exponent < -4 || exponent >= 6) return scientific;
   return rounded_text(value, digits - 1 - exponent);
+}
+
+std::string counted(std::ptrdiff_t count, std::string_view one, std::string_view several) {
+  return fmt::format("{} {}", count, count == 1 ? one : several);
 }
 
 int decimals_for_error(double error) {

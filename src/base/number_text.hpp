@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: Apache-2.0
 #pragma once
 
+#include <cstddef>
 #include <optional>
 #include <string>
 #include <string_view>
@@ -24,6 +25,9 @@ namespace bandwright {
 /// `digits` significant digits, for quantities whose size is not known beforehand (p-values,
 /// T2, Q): fixed notation between 1e-4 and 1e6, otherwise scientific.
 [[nodiscard]] std::string significant_text(double value, int digits);
+
+/// "1 spectrum", "3 spectra".
+[[nodiscard]] std::string counted(std::ptrdiff_t count, std::string_view one, std::string_view several);
 
 /// Decimals that show an error statistic of this size with three significant digits, between 0
 /// and 10. All values in the unit of a component are shown with the decimals of its error.

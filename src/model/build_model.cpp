@@ -8,6 +8,7 @@
 #include <limits>
 
 #include "base/error.hpp"
+#include "base/number_text.hpp"
 #include "model/outlier_limits.hpp"
 #include "model/standards.hpp"
 #include "numerics/distributions.hpp"
@@ -198,8 +199,8 @@ void warn_about(const ComponentModel& component, Index max_factors, double max_a
   const auto warn = [&](std::string text) { warnings.push_back({component.name + ": " + std::move(text), {}, 0}); };
   const Index asked = standards_asked_for(component.factors(), component.recipe.scaling);
   if (component.statistics.samples < asked)
-    warn(fmt::format("{} standards for {} factors; infrared practice asks for {} or more", component.statistics.samples,
-                     component.factors(), asked));
+    warn(fmt::format("{} for {}; infrared practice asks for {} or more", counted(component.statistics.samples, "standard", "standards"),
+                     counted(component.factors(), "factor", "factors"), asked));
   const auto length = static_cast<Index>(component.curve.size());
   if (length < max_factors)
     warn(fmt::format("the error curve ends at {} factors, not {}: the standards carry no more", length, max_factors));
@@ -211,7 +212,7 @@ void warn_about(const ComponentModel& component, Index max_factors, double max_a
   for (Index i = 0; i < c.data.spectra.rows(); ++i)
     if (component.calibration.chain.largest_inside(row_of(c.data.spectra, i)) > max_absorbance) ++saturated;
   if (saturated > 0)
-    warn(fmt::format("{} standard spectra are saturated inside the windows (above {})", saturated, max_absorbance));
+    warn(fmt::format("saturated inside the windows (above {}): {}", max_absorbance, counted(saturated, "standard spectrum", "standard spectra")));
 }
 
 ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& asked, const MatchedStandards& matched,
@@ -228,8 +229,8 @@ ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& aske
   TrainingData data = training_data(matched, spectra, column, used_rows);
   constexpr Index kFewestSamples = 3;
   if (data.samples() < kFewestSamples)
-    throw Error(ErrorKind::Input, fmt::format("{} standards have a reference value; at least {} are needed", data.samples(),
-                                              kFewestSamples));
+    throw Error(ErrorKind::Input, fmt::format("only {} with a reference value; at least {} are needed",
+                                              counted(data.samples(), "standard", "standards"), kFewestSamples));
   check_pretreatment(component.recipe, matched, used_rows, spectra);
   Candidates candidates = try_all_factors(component.recipe, std::move(data), folds, pool, progress);
   candidates.used_rows = std::move(used_rows);

@@ -9,6 +9,8 @@
 #include <set>
 #include <unordered_map>
 
+#include "base/number_text.hpp"
+
 namespace bandwright {
 namespace {
 
@@ -89,12 +91,15 @@ MatchedStandards match_standards(const Recipe& recipe, const SpectraSet& spectra
   for (std::size_t i = 0; i < reference.samples.size(); ++i)
     if (!with_spectra.contains(static_cast<Index>(i)) && !excluded.samples.contains(reference.samples[i]))
       without_spectra.push_back(reference.samples[i]);
-  if (!without_reference.empty())
-    matched.warnings.push_back({fmt::format("{} spectra have no row in the reference table and are not used: {}",
-                                            without_reference.size(), some_of(without_reference)), {}, 0});
-  if (!without_spectra.empty())
-    matched.warnings.push_back({fmt::format("{} rows of the reference table have no spectrum and are not used: {}",
-                                            without_spectra.size(), some_of(without_spectra)), {}, 0});
+  const auto warn_unused = [&](const std::vector<std::string>& names, const char* one, const char* several) {
+    if (names.empty()) return;
+    const auto count = static_cast<Index>(names.size());
+    matched.warnings.push_back({fmt::format("not used: {}: {}", counted(count, one, several), some_of(names)), {}, 0});
+  };
+  warn_unused(without_reference, "spectrum without a row in the reference table",
+              "spectra without a row in the reference table");
+  warn_unused(without_spectra, "row of the reference table without a spectrum",
+              "rows of the reference table without a spectrum");
   return matched;
 }
 

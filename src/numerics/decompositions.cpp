@@ -18,7 +18,9 @@ arma::mat transposed(const MatrixView& X) {
   return {compact.data(), static_cast<arma::uword>(X.cols()), static_cast<arma::uword>(X.rows())};
 }
 
-Vector to_vector(const arma::vec& v) { return Eigen::Map<const Vector>(v.memptr(), static_cast<Index>(v.n_elem)); }
+Vector to_vector(const arma::vec& v) {
+  return Eigen::Map<const Vector>(v.memptr(), static_cast<Index>(v.n_elem));
+}
 
 }  // namespace
 
@@ -38,6 +40,7 @@ Vector symmetric_eigenvalues(const MatrixView& S) {
 
 Matrix least_squares(const MatrixView& A, const MatrixView& B) {
   use_one_blas_thread();
+  if (A.rows() < A.cols()) fail("the columns of a least-squares problem are linearly dependent");
   arma::mat solution;
   if (!arma::solve(solution, transposed(A).t(), transposed(B).t(), arma::solve_opts::no_approx))
     fail("the columns of a least-squares problem are linearly dependent");

@@ -4,6 +4,8 @@
 #include "base/matrix.hpp"
 
 /// Matrix products over OpenBLAS, one thread each; callers run them side by side in a WorkerPool.
+/// Same bits for the same values on the same kernel, wherever matrices and vectors lie, as long as they
+/// begin at multiples of 16 bytes, as allocations do (older kernels need that; newer ones do not).
 
 namespace bandwright {
 

@@ -8,6 +8,7 @@
 #include <limits>
 
 #include "base/error.hpp"
+#include "base/number_text.hpp"
 #include "numerics/distributions.hpp"
 #include "numerics/sums.hpp"
 #include "validation/linear_fit.hpp"
@@ -22,8 +23,8 @@ void check_sizes(const VectorView& reference, const VectorView& predicted, Index
   if (reference.size() != predicted.size())
     throw Error(ErrorKind::Input, fmt::format("{} reference values, but {} predicted ones", reference.size(), predicted.size()));
   if (reference.size() < fewest)
-    throw Error(ErrorKind::Input, fmt::format("{} samples have predicted and reference values; at least {} are needed",
-                                              reference.size(), fewest));
+    throw Error(ErrorKind::Input, fmt::format("predicted and reference values exist for {}; at least {} are needed",
+                                              counted(reference.size(), "sample", "samples"), fewest));
 }
 
 double spread(const VectorView& values) { return sum_of_squared_deviations(values_of(values)); }

@@ -8,6 +8,7 @@
 #include <set>
 #include <unordered_map>
 
+#include "base/number_text.hpp"
 #include "model/interval.hpp"
 #include "numerics/distributions.hpp"
 #include "numerics/sums.hpp"
@@ -124,11 +125,11 @@ std::vector<Warning> warnings_about(const Model& model, const std::vector<Compon
     const auto warn = [&](std::string text) { warnings.push_back({component.name + ": " + std::move(text), {}, 0}); };
     const Index asked = samples_asked_for(model.components[c].factors());
     if (component.errors.n < asked)
-      warn(fmt::format("{} samples; infrared practice asks for {} or more with {} factors", component.errors.n, asked,
-                       model.components[c].factors()));
+      warn(fmt::format("{}; infrared practice asks for {} or more with {}", counted(component.errors.n, "sample", "samples"),
+                       asked, counted(model.components[c].factors(), "factor", "factors")));
     if (component.flagged > 0)
-      warn(fmt::format("{} of {} samples carry flags; they are counted in", component.flagged,
-                       component.errors.n));
+      warn(fmt::format("flagged, and counted in: {} of {}", component.flagged,
+                       counted(component.errors.n, "sample", "samples")));
   }
   return warnings;
 }
@@ -177,8 +178,8 @@ Validation validate(const Model& model, const SpectraSet& spectra, const Referen
   }
   out.warnings = warnings_about(model, out.components);
   if (!without_row.empty())
-    out.warnings.push_back({fmt::format("{} samples have no row in the reference table and are not tested, the first is \"{}\"",
-                                        without_row.size(), without_row.front()), {}, 0});
+    out.warnings.push_back({fmt::format("not tested: {} without a row in the reference table, the first is \"{}\"",
+                                        counted(static_cast<Index>(without_row.size()), "sample", "samples"), without_row.front()), {}, 0});
   return out;
 }
 

@@ -16,7 +16,8 @@ TEST(Error, LineHoldsWhatIsKnownInOneOrder) {
   EXPECT_EQ(line_of("bad", {.file = "a.csv", .line = 12, .field = {}, .hint = {}}), "a.csv:12: bad");
   EXPECT_EQ(line_of("bad", {.file = {}, .line = 12, .field = {}, .hint = {}}), "line 12: bad");
   EXPECT_EQ(line_of("bad", {.file = {}, .line = 0, .field = "points", .hint = {}}), "points: bad");
-  EXPECT_EQ(line_of("bad", {.file = "a.csv", .line = 3, .field = "water", .hint = "mend it"}), "a.csv:3: water: bad (mend it)");
+  EXPECT_EQ(line_of("bad", {.file = "a.csv", .line = 3, .field = "water", .hint = "mend it"}),
+            "a.csv:3: water: bad (mend it)");
 }
 
 TEST(Error, LineStaysOneLineWhateverTheNamesHold) {
@@ -54,8 +55,9 @@ TEST(IsUtf8, FollowsTheTable) {
   for (const char* good : {"", "abc", "\xc2\x80", "\xdf\xbf", "\xe0\xa0\x80", "\xed\x9f\xbf", "\xee\x80\x80",
                            "\xef\xbf\xbf", "\xf0\x90\x80\x80", "\xf4\x8f\xbf\xbf"})
     EXPECT_TRUE(is_utf8(good)) << printable(good);
-  for (const char* bad : {"\x80", "\xc0\x80", "\xc1\xbf", "\xc2", "\xc2\x41", "\xe0\x9f\xbf", "\xed\xa0\x80", "\xe2\x82",
-                          "\xf0\x8f\xbf\xbf", "\xf4\x90\x80\x80", "\xf5\x80\x80\x80", "\xff", "a\xe4z"})
+  for (const char* bad :
+       {"\x80", "\xc0\x80", "\xc1\xbf", "\xc2", "\xc2\x41", "\xe0\x9f\xbf", "\xed\xa0\x80", "\xe2\x82",
+        "\xf0\x8f\xbf\xbf", "\xf4\x90\x80\x80", "\xf5\x80\x80\x80", "\xff", "a\xe4z"})
     EXPECT_FALSE(is_utf8(bad)) << printable(bad);
 }
 

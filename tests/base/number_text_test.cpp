@@ -31,20 +31,24 @@ TEST(NumberText, ReadsDecimalNumbers) {
 }
 
 TEST(NumberText, RefusesEverythingElse) {
-  for (const char* text : {"", " ", "+", "-", "++1", "+-1", "1,5", "1.2.3", "12a", "a", "0x10", "1 2", "inf", "-inf",
-                           "nan", "NaN", "infinity", "1e400", "-1e400", "1e-400", "1e", ".", "1_000", "\n1", "١"})
+  for (const char* text : {"",       " ",      "+",   "-",   "++1",   "+-1", "1,5", "1.2.3",    "12a",
+                           "a",      "0x10",   "1 2", "inf", "-inf",  "nan", "NaN", "infinity", "1e400",
+                           "-1e400", "1e-400", "1e",  ".",   "1_000", "\n1", "١"})
     EXPECT_FALSE(parse_number(text).has_value()) << '"' << text << '"';
   EXPECT_FALSE(parse_number(std::string_view("1\0", 2)).has_value());
 }
 
 TEST(NumberText, ExactTextReadsBackAsTheSameBits) {
-  for (const double value : {0.1, -0.0, 1.0 / 3.0, 5e-324, 1.7976931348623157e308, 123456789012345680.0, 1e21})
-    EXPECT_EQ(std::bit_cast<std::uint64_t>(parse_number(exact_text(value)).value()), std::bit_cast<std::uint64_t>(value));
+  for (const double value :
+       {0.1, -0.0, 1.0 / 3.0, 5e-324, 1.7976931348623157e308, 123456789012345680.0, 1e21})
+    EXPECT_EQ(std::bit_cast<std::uint64_t>(parse_number(exact_text(value)).value()),
+              std::bit_cast<std::uint64_t>(value));
   Random random(1);
   for (int i = 0; i < 20000; ++i) {
     const auto value = std::bit_cast<double>(random.next());
     if (!std::isfinite(value)) continue;
-    EXPECT_EQ(std::bit_cast<std::uint64_t>(parse_number(exact_text(value)).value()), std::bit_cast<std::uint64_t>(value));
+    EXPECT_EQ(std::bit_cast<std::uint64_t>(parse_number(exact_text(value)).value()),
+              std::bit_cast<std::uint64_t>(value));
   }
 }
 

@@ -54,7 +54,8 @@ std::uint64_t seed_for_state(std::uint64_t state) {
 // The widely published test vector of the plain generator with state 1234567 (from memory).
 TEST(Random, GivesThePublishedNumbers) {
   Random random(seed_for_state(1234567));
-  for (const std::uint64_t want : {6457827717110365317U, 3203168211198807973U, 9817491932198370423U, 4593380528125082431U, 16408922859458223821U})
+  for (const std::uint64_t want : {6457827717110365317U, 3203168211198807973U, 9817491932198370423U,
+                                   4593380528125082431U, 16408922859458223821U})
     EXPECT_EQ(random.next(), want);
 }
 
@@ -85,7 +86,8 @@ TEST(Random, BelowStaysBelowAndIsUniform) {
 // Bounds above 2^63 throw almost half of the draws away: a plain remainder would favour the lower half.
 TEST(Random, BelowHasNoBiasForHugeBounds) {
   Random random(2);
-  constexpr std::uint64_t kBound = 3U * (std::uint64_t{1} << 62U);  // 3/4 of all: the remainder doubles the lowest third
+  constexpr std::uint64_t kBound =
+      3U * (std::uint64_t{1} << 62U);  // 3/4 of all: the remainder doubles the lowest third
   int lowest_third = 0;
   for (int i = 0; i < 30000; ++i) {
     const std::uint64_t drawn = random.below(kBound);

@@ -84,10 +84,11 @@ TEST(WorkerPool, LowestExceptionWins) {
 TEST(WorkerPool, NoNewJobIsBegunAfterAnException) {
   WorkerPool pool(1);
   std::size_t last = 0;
-  EXPECT_EQ(thrown_by(pool, 100, [&](std::size_t i) {
-              last = i;
-              if (i == 5) throw std::runtime_error("stop");
-            }),
+  EXPECT_EQ(thrown_by(pool, 100,
+                      [&](std::size_t i) {
+                        last = i;
+                        if (i == 5) throw std::runtime_error("stop");
+                      }),
             "stop");
   EXPECT_EQ(last, 5u);
 }

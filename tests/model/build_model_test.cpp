@@ -304,7 +304,7 @@ TEST(BuildModel, WarningsSayWhatAnAnalystShouldKnow) {
   EXPECT_THAT(
       texts, testing::ElementsAre("a: 14 standards for 2 factors; infrared practice asks for 24 or more",
                                   "a: the error curve ends at 9 factors, not 20: the standards carry no more",
-                                  "a: 1 standard spectra are saturated inside the windows (above 2)"));
+                                  "a: saturated inside the windows (above 2): 1 standard spectrum"));
 }
 
 TEST(BuildModel, SpectrumThatCannotBeTreatedIsRefusedByName) {
@@ -337,7 +337,7 @@ TEST(BuildModel, RefusalsNameTheComponent) {
   Made few = made;
   few.table.columns[0].values.tail(12).setConstant(std::numeric_limits<double>::quiet_NaN());
   EXPECT_EQ(refused(ErrorKind::Input, few),
-            "component \"a\": 2 standards have a reference value; at least 3 are needed");
+            "component \"a\": only 2 standards with a reference value; at least 3 are needed");
 
   recipe.cross_validation.scheme = FoldScheme::Blocks;
   recipe.cross_validation.folds = 15;

@@ -85,8 +85,8 @@ TEST(Standards, WhatIsUnmatchedIsNamedInAWarning) {
   EXPECT_THAT(got.spectrum_rows, ElementsAre(0));
   ASSERT_EQ(got.warnings.size(), 2u);
   EXPECT_EQ(got.warnings[0].text,
-            "7 spectra have no row in the reference table and are not used: X1, X2, X3, X4, X5 and 2 more");
-  EXPECT_EQ(got.warnings[1].text, "1 rows of the reference table have no spectrum and are not used: B");
+            "not used: 7 spectra without a row in the reference table: X1, X2, X3, X4, X5 and 2 more");
+  EXPECT_EQ(got.warnings[1].text, "not used: 1 row of the reference table without a spectrum: B");
 }
 
 TEST(Standards, ExclusionsLeaveSamplesOrSpectraOutWithoutAWarning) {

@@ -22,7 +22,8 @@ struct Shape {
 };
 const std::vector<Shape> kTall{{1, 1}, {5, 1}, {2, 2}, {6, 6}, {9, 4}, {60, 31}};
 
-constexpr Tolerance kBackwardStable{.relative = 1e-13, .absolute = 1e-13};  // entries of size 1, up to 60 x 31
+constexpr Tolerance kBackwardStable{.relative = 1e-13,
+                                    .absolute = 1e-13};  // entries of size 1, up to 60 x 31
 const std::string kDependent = "the columns of a least-squares problem are linearly dependent";
 
 TEST(Decompositions, SingularValuesAgreeWithEigen) {
@@ -47,7 +48,9 @@ TEST(Decompositions, EigenvaluesAgreeWithEigen) {
     const Matrix X = random_matrix(2, p + 3, p);
     const Matrix S = X.transpose() * X;
     const Vector want = Eigen::SelfAdjointEigenSolver<Eigen::MatrixXd>(S).eigenvalues();
-    EXPECT_TRUE(expect_close(symmetric_eigenvalues(S), want, {.relative = 1e-12, .absolute = 1e-13 * S.norm()})) << p;
+    EXPECT_TRUE(
+        expect_close(symmetric_eigenvalues(S), want, {.relative = 1e-12, .absolute = 1e-13 * S.norm()}))
+        << p;
   }
 }
 
@@ -66,7 +69,9 @@ TEST(Decompositions, LeastSquaresAgreesWithEigen) {
     ASSERT_EQ(got.rows(), p);
     ASSERT_EQ(got.cols(), 3);
     for (Index j = 0; j < 3; ++j)
-      EXPECT_TRUE(expect_close_in_norm(got.col(j), want.col(j), {.relative = 1e-15 * condition(A, p) + 1e-14})) << n << " x " << p;
+      EXPECT_TRUE(
+          expect_close_in_norm(got.col(j), want.col(j), {.relative = 1e-15 * condition(A, p) + 1e-14}))
+          << n << " x " << p;
   }
 }
 
@@ -74,12 +79,14 @@ TEST(Decompositions, LeastSquaresOfAStraightLineByHand) {
   Matrix A(3, 2);
   A << 1, 0, 1, 1, 1, 2;
   const Matrix B = (Matrix(3, 1) << 1, 3, 4).finished();  // means 1 and 8/3, slope 3/2
-  EXPECT_TRUE(expect_close(least_squares(A, B).col(0), (Vector(2) << 7.0 / 6.0, 1.5).finished(), {.relative = 1e-14}));
+  EXPECT_TRUE(expect_close(least_squares(A, B).col(0), (Vector(2) << 7.0 / 6.0, 1.5).finished(),
+                           {.relative = 1e-14}));
 }
 
 TEST(Decompositions, DependentColumnsAreRefused) {
   const auto refused = [](const Matrix& A) {
-    return error_text(ErrorKind::Numerical, [&] { static_cast<void>(least_squares(A, Matrix::Ones(A.rows(), 1))); });
+    return error_text(ErrorKind::Numerical,
+                      [&] { static_cast<void>(least_squares(A, Matrix::Ones(A.rows(), 1))); });
   };
   EXPECT_EQ(refused(Matrix::Zero(4, 2)), kDependent);
   EXPECT_EQ(refused(Matrix::Zero(1, 1)), kDependent);
@@ -101,7 +108,9 @@ TEST(Decompositions, ValuesThatAreNotFiniteAreRefused) {
             "the singular value decomposition did not converge");
   EXPECT_EQ(error_text(ErrorKind::Numerical, [&] { static_cast<void>(symmetric_eigenvalues(A.topRows(2))); }),
             "the eigenvalue decomposition did not converge");
-  EXPECT_EQ(error_text(ErrorKind::Numerical, [&] { static_cast<void>(least_squares(A, Matrix::Ones(4, 1))); }), kDependent);
+  EXPECT_EQ(
+      error_text(ErrorKind::Numerical, [&] { static_cast<void>(least_squares(A, Matrix::Ones(4, 1))); }),
+      kDependent);
 }
 
 }  // namespace

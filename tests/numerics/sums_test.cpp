@@ -30,7 +30,8 @@ TEST(Sums, AgreeWithLongDouble) {
       total += x[i];
       product += static_cast<long double>(x[i]) * y[i];
     }
-    const Tolerance rounding{.absolute = 1.2e-16 * static_cast<double>(n)};  // half a unit for each of n terms of size 1
+    const Tolerance rounding{
+        .absolute = 1.2e-16 * static_cast<double>(n)};  // half a unit for each of n terms of size 1
     EXPECT_TRUE(expect_close(sum(values_of(x)), static_cast<double>(total), rounding)) << n;
     EXPECT_TRUE(expect_close(dot(values_of(x), values_of(y)), static_cast<double>(product), rounding)) << n;
     EXPECT_EQ(squared_norm(values_of(x)), dot(values_of(x), values_of(x)));

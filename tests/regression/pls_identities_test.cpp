@@ -30,7 +30,9 @@ Problem draw(Index rows_from, Index rows_to, Index columns_from, Index columns_t
   const auto n = *rc::gen::inRange<Index>(rows_from, rows_to);
   const auto p = *rc::gen::inRange<Index>(columns_from, columns_to);
   const auto seed = *rc::gen::inRange<std::uint64_t>(0, 1U << 30U);
-  Problem problem{.X = centred(random_matrix(seed, n, p)), .y = centred(random_vector(seed + 1, n)), .rank = std::min(n - 1, p)};
+  Problem problem{.X = centred(random_matrix(seed, n, p)),
+                  .y = centred(random_vector(seed + 1, n)),
+                  .rank = std::min(n - 1, p)};
   RC_PRE(condition(problem.X, problem.rank) < kWorstCondition);
   return problem;
 }
@@ -58,7 +60,8 @@ Matrix nipals(Matrix X, Vector y, Index factors) {
     X -= t * P.col(a).transpose();
     y -= q[a] * t;
     const Eigen::MatrixXd inner = P.leftCols(a + 1).transpose() * W.leftCols(a + 1);
-    b.row(a) = (W.leftCols(a + 1) * Eigen::HouseholderQR<Eigen::MatrixXd>(inner).solve(q.head(a + 1))).transpose();
+    b.row(a) =
+        (W.leftCols(a + 1) * Eigen::HouseholderQR<Eigen::MatrixXd>(inner).solve(q.head(a + 1))).transpose();
   }
   return b;
 }
@@ -80,15 +83,21 @@ void expect_both_algorithms_agree(const Problem& problem) {
   }
 }
 
-RC_GTEST_PROP(PlsIdentities, EqualsNipalsWithFewerSamplesThanVariables, ()) { expect_both_algorithms_agree(draw(4, 10, 12, 30)); }
+RC_GTEST_PROP(PlsIdentities, EqualsNipalsWithFewerSamplesThanVariables, ()) {
+  expect_both_algorithms_agree(draw(4, 10, 12, 30));
+}
 RC_GTEST_PROP(PlsIdentities, EqualsNipalsWithAsManySamplesAsVariables, ()) {
   const auto size = *rc::gen::inRange<Index>(3, 9);
   const auto seed = *rc::gen::inRange<std::uint64_t>(0, 1U << 30U);
-  Problem problem{.X = centred(random_matrix(seed, size, size)), .y = centred(random_vector(seed + 1, size)), .rank = size - 1};
+  Problem problem{.X = centred(random_matrix(seed, size, size)),
+                  .y = centred(random_vector(seed + 1, size)),
+                  .rank = size - 1};
   RC_PRE(condition(problem.X, problem.rank) < kWorstCondition);
   expect_both_algorithms_agree(problem);
 }
-RC_GTEST_PROP(PlsIdentities, EqualsNipalsWithMoreSamplesThanVariables, ()) { expect_both_algorithms_agree(draw(12, 40, 2, 9)); }
+RC_GTEST_PROP(PlsIdentities, EqualsNipalsWithMoreSamplesThanVariables, ()) {
+  expect_both_algorithms_agree(draw(12, 40, 2, 9));
+}
 
 RC_GTEST_PROP(PlsIdentities, AtFullRankItIsOrdinaryLeastSquares, ()) {
   const Problem problem = draw(10, 30, 1, 8);

@@ -21,17 +21,22 @@ LatentPath fit(const Matrix& X, const Vector& y, Index factors) {
   return fit_pls(X, y, Vector::Ones(X.rows()), factors);
 }
 
-LatentPath small_path() { return fit(centred(small::spectra()), centred(small::reference()), small::kFactors); }
+LatentPath small_path() {
+  return fit(centred(small::spectra()), centred(small::reference()), small::kFactors);
+}
 
-constexpr Tolerance kPrinted{.relative = 1e-9, .absolute = 1e-12};      // 12 digits printed
-constexpr Tolerance kNineDigits{.relative = 2e-9, .absolute = 1e-10};   // 9 or 10 digits printed
+constexpr Tolerance kPrinted{.relative = 1e-9, .absolute = 1e-12};     // 12 digits printed
+constexpr Tolerance kNineDigits{.relative = 2e-9, .absolute = 1e-10};  // 9 or 10 digits printed
 
 TEST(Pls, SmallSetCoefficients) {
   const LatentPath path = small_path();
   ASSERT_EQ(path.factors(), small::kFactors);
   for (Index k = 1; k <= small::kFactors; ++k) {
-    EXPECT_TRUE(expect_close(path.coefficients(k), small::coefficients().row(k - 1).transpose(), kPrinted)) << k;
-    EXPECT_TRUE(expect_close(path.coefficients(k).norm(), small::coefficient_norms()[k - 1], {.absolute = 5.1e-6})) << k;
+    EXPECT_TRUE(expect_close(path.coefficients(k), small::coefficients().row(k - 1).transpose(), kPrinted))
+        << k;
+    EXPECT_TRUE(
+        expect_close(path.coefficients(k).norm(), small::coefficient_norms()[k - 1], {.absolute = 5.1e-6}))
+        << k;
   }
 }
 
@@ -40,9 +45,11 @@ TEST(Pls, SmallSetWeightsLoadingsAndScores) {
   const LatentPath path = small_path();
   const Vector w1 = path.rotations.row(0).transpose();
   const double sign1 = std::copysign(1.0, w1[0]);
-  EXPECT_TRUE(expect_close(w1 * sign1, small::of(0.239108240, 0.355583714, 0.705523242, 0.522343753, 0.213965958), kNineDigits));
+  EXPECT_TRUE(expect_close(
+      w1 * sign1, small::of(0.239108240, 0.355583714, 0.705523242, 0.522343753, 0.213965958), kNineDigits));
   EXPECT_TRUE(expect_close(path.loadings.row(0).transpose() * sign1,
-                           small::of(0.261624353, 0.350292350, 0.675878080, 0.541451098, 0.248702713), kNineDigits));
+                           small::of(0.261624353, 0.350292350, 0.675878080, 0.541451098, 0.248702713),
+                           kNineDigits));
   EXPECT_TRUE(expect_close(path.y_loadings[0] * sign1, 0.1228078053, kNineDigits));
   EXPECT_TRUE(expect_close(path.score_squares[0], 396.7394724, kNineDigits));
 
@@ -50,7 +57,9 @@ TEST(Pls, SmallSetWeightsLoadingsAndScores) {
   const Vector r2 = path.rotations.row(1).transpose();
   const Vector w2 = r2 - r2.dot(w1) * w1;
   const double sign2 = w2[0] < 0.0 ? 1.0 : -1.0;
-  EXPECT_TRUE(expect_close(w2 * sign2, small::of(-0.412080240, 0.0968402824, 0.542553049, -0.349694443, -0.635737226), kNineDigits));
+  EXPECT_TRUE(expect_close(w2 * sign2,
+                           small::of(-0.412080240, 0.0968402824, 0.542553049, -0.349694443, -0.635737226),
+                           kNineDigits));
   EXPECT_TRUE(expect_close(path.y_loadings[1] * sign2, 0.1172939006, kNineDigits));
   EXPECT_TRUE(expect_close(path.score_squares[1], 22.69695334, kNineDigits));
 }
@@ -78,7 +87,8 @@ TEST(Pls, RowWeightsCountRowsSeveralTimes) {
   const LatentPath halves = fit_pls(X_twice, y_twice, Vector::Constant(16, 0.5), 4);
   const LatentPath singles = fit(X, y, 4);
   constexpr Tolerance kRounding{.relative = 1e-12, .absolute = 1e-13};
-  for (Index k = 1; k <= 4; ++k) EXPECT_TRUE(expect_close(halves.coefficients(k), singles.coefficients(k), kRounding));
+  for (Index k = 1; k <= 4; ++k)
+    EXPECT_TRUE(expect_close(halves.coefficients(k), singles.coefficients(k), kRounding));
   EXPECT_TRUE(expect_close(halves.score_squares, singles.score_squares, kRounding));
 
   // A row of weight 3 is three rows, when the rows as weighted are centred.
@@ -87,7 +97,8 @@ TEST(Pls, RowWeightsCountRowsSeveralTimes) {
   const LatentPath weighted = fit_pls(X, y, weights, 3);
   const Matrix X_repeated = X(repeated, Eigen::all);
   const Vector y_repeated = y(repeated);
-  EXPECT_TRUE(expect_close(weighted.coefficients(3), fit(X_repeated, y_repeated, 3).coefficients(3), kRounding));
+  EXPECT_TRUE(
+      expect_close(weighted.coefficients(3), fit(X_repeated, y_repeated, 3).coefficients(3), kRounding));
 }
 
 TEST(Pls, OneVariableIsTheStraightLine) {
@@ -95,7 +106,8 @@ TEST(Pls, OneVariableIsTheStraightLine) {
   const Vector y = centred(small::reference());
   const LatentPath path = fit(X, y, 5);
   EXPECT_EQ(path.factors(), 1);
-  EXPECT_TRUE(expect_close(path.coefficients(1)[0], X.col(0).dot(y) / X.col(0).squaredNorm(), {.relative = 1e-14}));
+  EXPECT_TRUE(
+      expect_close(path.coefficients(1)[0], X.col(0).dot(y) / X.col(0).squaredNorm(), {.relative = 1e-14}));
 }
 
 TEST(Pls, ConstantColumnGetsNoCoefficient) {
@@ -109,7 +121,8 @@ TEST(Pls, ConstantColumnGetsNoCoefficient) {
 TEST(Pls, PathEndsWithTheRank) {
   const Vector y = centred(small::reference());
   Matrix collinear(8, 6);
-  collinear << centred(small::spectra()), 2.0 * centred(small::spectra()).col(0) - centred(small::spectra()).col(4);
+  collinear << centred(small::spectra()),
+      2.0 * centred(small::spectra()).col(0) - centred(small::spectra()).col(4);
   const LatentPath path = fit(collinear, y, 6);
   EXPECT_EQ(path.factors(), 5);
   EXPECT_EQ(path.end, PathEnd::RankUsedUp);
@@ -144,9 +157,7 @@ TEST(Pls, ResponseExplainedEndsThePath) {
   EXPECT_TRUE(expect_close(path.coefficients(1), Vector::Ones(2), {.relative = 1e-14}));
 }
 
-TEST(Pls, OneSampleCarriesNoFactor) {
-  EXPECT_EQ(fit(Matrix::Zero(1, 3), Vector::Zero(1), 2).factors(), 0);
-}
+TEST(Pls, OneSampleCarriesNoFactor) { EXPECT_EQ(fit(Matrix::Zero(1, 3), Vector::Zero(1), 2).factors(), 0); }
 
 TEST(Pls, DuplicateRowsAreNoTrouble) {
   Matrix X(16, 5);
@@ -174,10 +185,14 @@ TEST(Pls, RefusesWhatItCannotFit) {
   const std::string kEmpty = "a regression needs at least one spectrum and one point";
   EXPECT_EQ(refused(Matrix(0, 3), Vector(0), Vector(0), 1), kEmpty);
   EXPECT_EQ(refused(Matrix(3, 0), Vector::Ones(3), Vector::Ones(3), 1), kEmpty);
-  EXPECT_EQ(refused(Matrix::Ones(3, 2), Vector::Ones(2), Vector::Ones(3), 1), "3 spectra, but 2 reference values and 3 weights");
-  EXPECT_EQ(refused(Matrix::Ones(3, 2), Vector::Ones(3), Vector::Ones(4), 1), "3 spectra, but 3 reference values and 4 weights");
-  EXPECT_EQ(refused(Matrix::Ones(3, 2), Vector::Ones(3), Vector::Ones(3), 0), "a regression needs at least one factor");
-  for (const double bad : {std::numeric_limits<double>::quiet_NaN(), std::numeric_limits<double>::infinity()}) {
+  EXPECT_EQ(refused(Matrix::Ones(3, 2), Vector::Ones(2), Vector::Ones(3), 1),
+            "3 spectra, but 2 reference values and 3 weights");
+  EXPECT_EQ(refused(Matrix::Ones(3, 2), Vector::Ones(3), Vector::Ones(4), 1),
+            "3 spectra, but 3 reference values and 4 weights");
+  EXPECT_EQ(refused(Matrix::Ones(3, 2), Vector::Ones(3), Vector::Ones(3), 0),
+            "a regression needs at least one factor");
+  for (const double bad :
+       {std::numeric_limits<double>::quiet_NaN(), std::numeric_limits<double>::infinity()}) {
     const std::string kNotFinite = "a regression needs finite spectra, reference values and weights";
     Matrix X = Matrix::Ones(3, 2);
     X(1, 1) = bad;

@@ -41,7 +41,8 @@ Rows fold_numbers(const std::vector<Fold>& folds, Index samples) {
 void expect_partition(const std::vector<Fold>& folds, Index samples, Index repeats) {
   std::vector<Rows> times(static_cast<std::size_t>(repeats), Rows(static_cast<std::size_t>(samples)));
   for (const Fold& fold : folds)
-    for (const Index i : fold.held_out) ++times.at(static_cast<std::size_t>(fold.repeat)).at(static_cast<std::size_t>(i));
+    for (const Index i : fold.held_out)
+      ++times.at(static_cast<std::size_t>(fold.repeat)).at(static_cast<std::size_t>(i));
   for (const Rows& of_repeat : times) EXPECT_THAT(of_repeat, testing::Each(1));
 }
 
@@ -53,7 +54,8 @@ TEST(Folds, LeaveOneOutHoldsEachSampleOutAlone) {
 TEST(Folds, BlocksAreConsecutiveAndTheFirstAreLonger) {
   EXPECT_THAT(held_out(make_folds(scheme(FoldScheme::Blocks, 3), 8, {})),
               ElementsAre(Rows{0, 1, 2}, Rows{3, 4, 5}, Rows{6, 7}));
-  EXPECT_THAT(held_out(make_folds(scheme(FoldScheme::Blocks, 2), 4, {})), ElementsAre(Rows{0, 1}, Rows{2, 3}));
+  EXPECT_THAT(held_out(make_folds(scheme(FoldScheme::Blocks, 2), 4, {})),
+              ElementsAre(Rows{0, 1}, Rows{2, 3}));
 }
 
 TEST(Folds, InterleavedPutsSampleIInFoldIModFolds) {
@@ -66,13 +68,14 @@ TEST(Folds, FoldNumbersOfTheOpenDataSets) {  // split.json of both folders
     SCOPED_TRACE(data->folder);
     const ReferenceResults split = data->results("split");
     const auto n = static_cast<Index>(data->training.size());
-    for (const auto& [name, options] : {std::pair{"loo", scheme(FoldScheme::LeaveOneOut)},
-                                        std::pair{"block10", scheme(FoldScheme::Blocks)},
-                                        std::pair{"venetian10", scheme(FoldScheme::Interleaved)}}) {
+    for (const auto& [name, options] :
+         {std::pair{"loo", scheme(FoldScheme::LeaveOneOut)}, std::pair{"block10", scheme(FoldScheme::Blocks)},
+          std::pair{"venetian10", scheme(FoldScheme::Interleaved)}}) {
       const Vector want = split.numbers({"cross_validation_fold_of_each_training_sample", name});
       const Rows got = fold_numbers(make_folds(options, n, {}), n);
       ASSERT_EQ(want.size(), n);
-      for (Index i = 0; i < n; ++i) EXPECT_EQ(got[static_cast<std::size_t>(i)], static_cast<Index>(want[i])) << name << i;
+      for (Index i = 0; i < n; ++i)
+        EXPECT_EQ(got[static_cast<std::size_t>(i)], static_cast<Index>(want[i])) << name << i;
     }
   }
 }
@@ -108,7 +111,8 @@ TEST(Folds, EverySchemeKeepsGroupsTogether) {
 
 TEST(Folds, BlocksAndInterleavedCountGroups) {
   const std::vector<std::string> batches{"a", "a", "a", "b", "c", "d"};
-  EXPECT_THAT(held_out(make_folds(scheme(FoldScheme::Blocks, 2), 6, batches)), ElementsAre(Rows{0, 1, 2, 3}, Rows{4, 5}));
+  EXPECT_THAT(held_out(make_folds(scheme(FoldScheme::Blocks, 2), 6, batches)),
+              ElementsAre(Rows{0, 1, 2, 3}, Rows{4, 5}));
   EXPECT_THAT(held_out(make_folds(scheme(FoldScheme::Interleaved, 2), 6, batches)),
               ElementsAre(Rows{0, 1, 2, 4}, Rows{3, 5}));
 }
@@ -157,7 +161,8 @@ TEST(Folds, MonteCarloNeverLeavesOutNoneOrAll) {
   CrossValidation options = scheme(FoldScheme::MonteCarlo, 20);
   for (const double share : {0.001, 0.999}) {
     options.share_left_out = share;
-    for (const Fold& fold : make_folds(options, 5, {})) EXPECT_EQ(fold.held_out.size(), share < 0.5 ? 1u : 4u);
+    for (const Fold& fold : make_folds(options, 5, {}))
+      EXPECT_EQ(fold.held_out.size(), share < 0.5 ? 1u : 4u);
   }
 }
 
@@ -175,15 +180,26 @@ TEST(Folds, RefusalsSayWhatIsWrong) {
       {scheme(FoldScheme::LeaveOneOut), 1, {}, "[cross_validation] scheme: 1 sample(s) cannot be split"},
       {scheme(FoldScheme::LeaveOneOut), 0, {}, "[cross_validation] scheme: 0 sample(s) cannot be split"},
       {{}, 3, {"a", "a", "a"}, "[cross_validation] scheme: 1 group(s) cannot be split"},
-      {scheme(FoldScheme::LeaveGroupOut), 3, {}, "[cross_validation] scheme: leave-group-out needs [standards] group"},
+      {scheme(FoldScheme::LeaveGroupOut),
+       3,
+       {},
+       "[cross_validation] scheme: leave-group-out needs [standards] group"},
       {scheme(FoldScheme::Blocks), 9, {}, "[cross_validation] folds: 10 folds, but only 9 samples"},
-      {scheme(FoldScheme::Interleaved, 3), 4, {"a", "a", "b", "b"}, "[cross_validation] folds: 3 folds, but only 2 groups"},
+      {scheme(FoldScheme::Interleaved, 3),
+       4,
+       {"a", "a", "b", "b"},
+       "[cross_validation] folds: 3 folds, but only 2 groups"},
       {scheme(FoldScheme::Random), 9, {}, "[cross_validation] folds: 10 folds, but only 9 samples"},
-      {repeated, 9, {},
-       "[cross_validation] repeats: blocks gives the same folds every time; only random and monte-carlo repeat"}};
+      {repeated,
+       9,
+       {},
+       "[cross_validation] repeats: blocks gives the same folds every time; only random and monte-carlo "
+       "repeat"}};
   for (const Refusal& refusal : cases)
-    EXPECT_EQ(error_text(ErrorKind::Usage, [&] { static_cast<void>(make_folds(refusal.options, refusal.samples, refusal.groups)); }),
-              refusal.text);
+    EXPECT_EQ(
+        error_text(ErrorKind::Usage,
+                   [&] { static_cast<void>(make_folds(refusal.options, refusal.samples, refusal.groups)); }),
+        refusal.text);
 }
 
 }  // namespace

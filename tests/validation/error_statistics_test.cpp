@@ -182,7 +182,7 @@ TEST(ErrorStatistics, RefusesTooFewOrUnequalValues) {
     static_cast<void>(error_statistics(Vector::Ones(1), Vector::Ones(1)));
     FAIL() << "one sample was accepted";
   } catch (const Error& error) {
-    EXPECT_STREQ(error.what(), "1 samples have predicted and reference values; at least 2 are needed");
+    EXPECT_STREQ(error.what(), "predicted and reference values exist for 1 sample; at least 2 are needed");
   }
   EXPECT_THROW(static_cast<void>(error_statistics(Vector::Ones(3), Vector::Ones(4))), Error);
 }

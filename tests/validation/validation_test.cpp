@@ -139,7 +139,7 @@ TEST(Validation, WarnsOfTooFewSamplesAndOfFlags) {
   ASSERT_GE(validation.warnings.size(), 2U);
   EXPECT_EQ(validation.warnings[0].text, "acid: 10 samples; infrared practice asks for 20 or more with " +
                                              std::to_string(toy_model().components[0].factors()) + " factors");
-  EXPECT_EQ(validation.warnings[1].text, "acid: 1 of 10 samples carry flags; they are counted in");
+  EXPECT_EQ(validation.warnings[1].text, "acid: flagged, and counted in: 1 of 10 samples");
 }
 
 }  // namespace
