@@ -55,8 +55,7 @@ void add_components(std::string& out, const Model& model, const std::string& sam
 std::string prediction_csv(const Model& model, const Prediction& prediction) {
   std::string out =
       "sample,spectrum,replicates,component,unit,value,low,high,level,leverage,t2,t2_limit,q,q_limit,flags,"
-      "verdict,"
-      "largest_difference,refused\n";
+      "verdict,largest_difference,refused\n";
   for (const SpectrumResult& record : prediction.spectra) {
     if (record.refused)
       add_line(out, {cell(record.sample), cell(record.spectrum), "0", "", "", "", "", "", "", "", "", "", "",
