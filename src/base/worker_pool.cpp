@@ -73,9 +73,7 @@ WorkerPool::~WorkerPool() {
   state_->work_ready.notify_all();
 }
 
-unsigned WorkerPool::workers() const noexcept {
-  return static_cast<unsigned>(state_->threads.size()) + 1U;
-}
+unsigned WorkerPool::workers() const noexcept { return static_cast<unsigned>(state_->threads.size()) + 1U; }
 
 void WorkerPool::for_each_index(std::size_t count, const std::function<void(std::size_t)>& job) {
   if (count == 0) return;

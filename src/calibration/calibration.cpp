@@ -35,7 +35,8 @@ Vector scaled_row(const FittedScaling& scaling, const Matrix& pretreated, Index 
   return x;
 }
 
-LatentPath fit_regression(const CalibrationRecipe& recipe, const Matrix& X, const Vector& y, const VectorView& row_weights) {
+LatentPath fit_regression(const CalibrationRecipe& recipe, const Matrix& X, const Vector& y,
+                          const VectorView& row_weights) {
   switch (recipe.kind) {
     case RegressionKind::Pls:
       return fit_pls(X, y, row_weights, recipe.max_factors);
@@ -55,7 +56,8 @@ double Calibration::intercept(Index factors) const {
 }
 
 Calibration Calibration::truncated(Index factors) const {
-  return {.chain = chain, .scaling = scaling, .response_mean = response_mean, .path = path.truncated(factors)};
+  return {
+      .chain = chain, .scaling = scaling, .response_mean = response_mean, .path = path.truncated(factors)};
 }
 
 Calibration fit_calibration(const CalibrationRecipe& recipe, const Axis& axis, const MatrixView& spectra,
@@ -68,7 +70,8 @@ Calibration fit_calibration(const CalibrationRecipe& recipe, const Axis& axis, c
   const Vector y_centred = y.array() - fitted.response_mean;
   fitted.path = fit_regression(recipe, fitted.scaling.apply(pretreated), y_centred, row_weights);
   if (fitted.factors() == 0)
-    throw Error(ErrorKind::Numerical, "no factor can be computed: the reference values or the spectra do not vary");
+    throw Error(ErrorKind::Numerical,
+                "no factor can be computed: the reference values or the spectra do not vary");
   return fitted;
 }
 
@@ -94,7 +97,9 @@ Projection project(const Calibration& calibration, const MatrixView& spectra, In
 PathProjection project_path(const Calibration& calibration, const MatrixView& spectra) {
   const Index a = calibration.factors();
   const Matrix pretreated = calibration.chain.apply(spectra);
-  PathProjection out{.values = Matrix(spectra.rows(), a), .leverage = Matrix(spectra.rows(), a), .q = Matrix(spectra.rows(), a)};
+  PathProjection out{.values = Matrix(spectra.rows(), a),
+                     .leverage = Matrix(spectra.rows(), a),
+                     .q = Matrix(spectra.rows(), a)};
   for (Index i = 0; i < spectra.rows(); ++i) {
     Vector x = scaled_row(calibration.scaling, pretreated, i);
     double value = calibration.response_mean;

@@ -67,6 +67,7 @@ struct PathProjection {
 [[nodiscard]] PathProjection project_path(const Calibration& calibration, const MatrixView& spectra);
 
 /// What `factors` factors leave of the pretreated, centred and scaled spectra: n x p.
-[[nodiscard]] Matrix spectral_residuals(const Calibration& calibration, const MatrixView& spectra, Index factors);
+[[nodiscard]] Matrix spectral_residuals(const Calibration& calibration, const MatrixView& spectra,
+                                        Index factors);
 
 }  // namespace bandwright

@@ -108,6 +108,11 @@ ErrorContext place_in_plan(const Plan& plan, const std::string& field) {
   for (std::size_t i = 0; i < plan.recipe.components.size(); ++i)
     if (field == fmt::format("component \"{}\"", plan.recipe.components[i].name))
       place.line = plan.component_lines[i];
+  for (std::size_t i = 0; i < plan.recipe.exclusions.size(); ++i) {
+    const Exclusion& exclusion = plan.recipe.exclusions[i];
+    const std::string& name = exclusion.sample.empty() ? exclusion.spectrum : exclusion.sample;
+    if (field == fmt::format("[[exclude]] \"{}\"", name)) place.line = plan.exclusion_lines[i];
+  }
   return place;
 }
 

@@ -17,6 +17,7 @@
 #include "cli/terminal.hpp"
 #include "cli/version.hpp"
 #include "numerics/linear_algebra.hpp"
+#include "records/plan.hpp"
 
 namespace bandwright::cli {
 namespace {
@@ -81,6 +82,8 @@ int run(const std::vector<std::string>& arguments) {
   bool version_json = false;
   app.add_flag("--version", version, "name and version; with --json also the libraries");
   app.add_flag("--json", version_json, "with --version: one JSON document");
+  bool plan_keys = false;
+  app.add_flag("--plan-keys", plan_keys, "every key of a plan file with its default, rule and meaning");
 
   std::vector<CommonOptions> common(commands.size());
   std::vector<CLI::App*> subcommands;
@@ -92,8 +95,10 @@ int run(const std::vector<std::string>& arguments) {
     subcommands.push_back(sub);
   }
 
-  if (!arguments.empty() && std::find(arguments.begin(), arguments.end(), "--version") != arguments.end())
-    app.require_subcommand(0);
+  const bool asks_for_text = std::any_of(arguments.begin(), arguments.end(), [](const std::string& argument) {
+    return argument == "--version" || argument == "--plan-keys";
+  });
+  if (asks_for_text) app.require_subcommand(0);
   check_command_word(arguments, commands);
   try {
     std::vector<std::string> reversed(arguments.rbegin(), arguments.rend());
@@ -107,6 +112,10 @@ int run(const std::vector<std::string>& arguments) {
   }
   if (version) {
     print(version_json ? version_document() : version_line());
+    return kDone;
+  }
+  if (plan_keys) {
+    print(plan_reference_markdown());
     return kDone;
   }
   check_linear_algebra();

@@ -20,7 +20,9 @@
 namespace bandwright {
 namespace {
 
-double weighted_sum(const VectorView& values, const VectorView& weights) { return dot(values_of(values), values_of(weights)); }
+double weighted_sum(const VectorView& values, const VectorView& weights) {
+  return dot(values_of(values), values_of(weights));
+}
 
 /// sum of weight * (value - mean)^2.
 double weighted_spread(const Vector& values, const Vector& weights) {
@@ -65,8 +67,9 @@ FactorDecision decide_factors(const FactorChoice& asked, const Candidates& candi
     decision.choices.push_back({rule, choose_factors(rule, candidates.squared_errors)});
   if (const auto* number = std::get_if<Index>(&asked)) {
     if (*number > candidates.factors)
-      throw Error(ErrorKind::Numerical, fmt::format("{} factors are asked for, but these standards carry no more than {}",
-                                                    *number, candidates.factors));
+      throw Error(ErrorKind::Numerical,
+                  fmt::format("{} factors are asked for, but these standards carry no more than {}", *number,
+                              candidates.factors));
     decision.factors = *number;
   } else {
     decision.rule = std::get<FactorRule>(asked);
@@ -81,7 +84,8 @@ double held_out_bias(const Candidates& c, Index k) {
   double weight = 0.0;
   for (std::size_t e = 0; e < c.held_out.row.size(); ++e) {
     const Index i = c.held_out.row[e];
-    total += c.data.row_weights[i] * (c.held_out.predicted(static_cast<Index>(e), k - 1) - c.data.reference[i]);
+    total +=
+        c.data.row_weights[i] * (c.held_out.predicted(static_cast<Index>(e), k - 1) - c.data.reference[i]);
     weight += c.data.row_weights[i];
   }
   return total / weight;
@@ -140,7 +144,8 @@ void check_pretreatment(const CalibrationRecipe& recipe, const MatchedStandards&
 }
 
 StandardsEvidence evidence_of(const Candidates& c, const MatchedStandards& matched, const SpectraSet& spectra,
-                              const ReferenceTable& reference, const CalibrationStatistics& statistics, Index k) {
+                              const ReferenceTable& reference, const CalibrationStatistics& statistics,
+                              Index k) {
   StandardsEvidence out;
   const auto n = static_cast<double>(statistics.samples);
   out.reference = c.data.reference;
@@ -182,7 +187,8 @@ OutlierLimits limits_of(const Candidates& c, const Calibration& chosen, double s
   limits.q_calibration = q_limit_from_values(values_of(fitted_q), significance);
   Matrix residuals = spectral_residuals(chosen, c.data.spectra, k);
   for (Index i = 0; i < residuals.rows(); ++i) residuals.row(i) *= std::sqrt(c.data.row_weights[i]);
-  limits.q_jackson_mudholkar = q_limit_jackson_mudholkar(values_of(residual_eigenvalues(residuals, n)), significance);
+  limits.q_jackson_mudholkar =
+      q_limit_jackson_mudholkar(values_of(residual_eigenvalues(residuals, n)), significance);
   return limits;
 }
 
@@ -196,29 +202,35 @@ Index standards_asked_for(Index factors, Scaling scaling) {
 
 void warn_about(const ComponentModel& component, Index max_factors, double max_absorbance,
                 const Candidates& c, std::vector<Warning>& warnings) {
-  const auto warn = [&](std::string text) { warnings.push_back({component.name + ": " + std::move(text), {}, 0}); };
+  const auto warn = [&](std::string text) {
+    warnings.push_back({component.name + ": " + std::move(text), {}, 0});
+  };
   const Index asked = standards_asked_for(component.factors(), component.recipe.scaling);
   if (component.statistics.samples < asked)
-    warn(fmt::format("{} for {}; infrared practice asks for {} or more", counted(component.statistics.samples, "standard", "standards"),
+    warn(fmt::format("{} for {}; infrared practice asks for {} or more",
+                     counted(component.statistics.samples, "standard", "standards"),
                      counted(component.factors(), "factor", "factors"), asked));
   const auto length = static_cast<Index>(component.curve.size());
   if (length < max_factors)
-    warn(fmt::format("the error curve ends at {} factors, not {}: the standards carry no more", length, max_factors));
+    warn(fmt::format("the error curve ends at {} factors, not {}: the standards carry no more", length,
+                     max_factors));
   if (component.decision.rule && component.factors() == length && length > 1)
-    warn(fmt::format("the rule chose the largest number of factors tried ({}); raise max_factors to see whether more "
-                     "would help",
-                     length));
+    warn(fmt::format(
+        "the rule chose the largest number of factors tried ({}); raise max_factors to see whether more "
+        "would help",
+        length));
   Index saturated = 0;
   for (Index i = 0; i < c.data.spectra.rows(); ++i)
     if (component.calibration.chain.largest_inside(row_of(c.data.spectra, i)) > max_absorbance) ++saturated;
   if (saturated > 0)
-    warn(fmt::format("saturated inside the windows (above {}): {}", max_absorbance, counted(saturated, "standard spectrum", "standard spectra")));
+    warn(fmt::format("saturated inside the windows (above {}): {}", max_absorbance,
+                     counted(saturated, "standard spectrum", "standard spectra")));
 }
 
-ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& asked, const MatchedStandards& matched,
-                               const SpectraSet& spectra, const ReferenceTable& reference,
-                               const std::vector<Fold>& folds, WorkerPool& pool, const Progress& progress,
-                               std::vector<Warning>& warnings) {
+ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& asked,
+                               const MatchedStandards& matched, const SpectraSet& spectra,
+                               const ReferenceTable& reference, const std::vector<Fold>& folds,
+                               WorkerPool& pool, const Progress& progress, std::vector<Warning>& warnings) {
   const ReferenceColumn& column = reference.column(asked.reference_column());
   ComponentModel component;
   component.name = asked.name;
@@ -229,8 +241,9 @@ ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& aske
   TrainingData data = training_data(matched, spectra, column, used_rows);
   constexpr Index kFewestSamples = 3;
   if (data.samples() < kFewestSamples)
-    throw Error(ErrorKind::Input, fmt::format("only {} with a reference value; at least {} are needed",
-                                              counted(data.samples(), "standard", "standards"), kFewestSamples));
+    throw Error(ErrorKind::Input,
+                fmt::format("only {} with a reference value; at least {} are needed",
+                            counted(data.samples(), "standard", "standards"), kFewestSamples));
   check_pretreatment(component.recipe, matched, used_rows, spectra);
   Candidates candidates = try_all_factors(component.recipe, std::move(data), folds, pool, progress);
   candidates.used_rows = std::move(used_rows);
@@ -252,8 +265,9 @@ ComponentModel build_component(const Recipe& recipe, const ComponentRecipe& aske
 CalibrationRecipe resolve(const Recipe& recipe, const ComponentRecipe& component, const Axis& axis) {
   CalibrationRecipe resolved;
   for (const Window& window : recipe.windows) {
-    const bool wanted = component.windows.empty() ||
-                        std::find(component.windows.begin(), component.windows.end(), window.name) != component.windows.end();
+    const bool wanted =
+        component.windows.empty() ||
+        std::find(component.windows.begin(), component.windows.end(), window.name) != component.windows.end();
     if (wanted) resolved.windows.push_back(window);
   }
   if (resolved.windows.empty()) resolved.windows.push_back(whole_axis(axis));
@@ -264,8 +278,8 @@ CalibrationRecipe resolve(const Recipe& recipe, const ComponentRecipe& component
   return resolved;
 }
 
-Model build_model(const Recipe& recipe, const SpectraSet& spectra, const ReferenceTable& reference, WorkerPool& pool,
-                  const BuildProgress& progress) {
+Model build_model(const Recipe& recipe, const SpectraSet& spectra, const ReferenceTable& reference,
+                  WorkerPool& pool, const BuildProgress& progress) {
   const MatchedStandards matched = match_standards(recipe, spectra, reference);
   Model model;
   model.recipe = recipe;
@@ -274,7 +288,8 @@ Model build_model(const Recipe& recipe, const SpectraSet& spectra, const Referen
   model.warnings = matched.warnings;
   model.samples = matched.samples();
   model.spectra = static_cast<Index>(matched.spectrum_rows.size());
-  for (const Index row : matched.spectrum_rows) model.spectrum_ids.push_back(spectra.ids[static_cast<std::size_t>(row)]);
+  for (const Index row : matched.spectrum_rows)
+    model.spectrum_ids.push_back(spectra.ids[static_cast<std::size_t>(row)]);
 
   const std::vector<Fold> folds = make_folds(recipe.cross_validation, matched.samples(), matched.groups);
   for (const ComponentRecipe& asked : recipe.components) {
@@ -285,7 +300,8 @@ Model build_model(const Recipe& recipe, const SpectraSet& spectra, const Referen
       model.components.push_back(
           build_component(recipe, asked, matched, spectra, reference, folds, pool, report, model.warnings));
     } catch (const Error& error) {
-      throw error.within({.file = {}, .line = 0, .field = fmt::format("component \"{}\"", asked.name), .hint = {}});
+      throw error.within(
+          {.file = {}, .line = 0, .field = fmt::format("component \"{}\"", asked.name), .hint = {}});
     }
   }
   return model;

@@ -21,14 +21,16 @@ using BuildProgress = std::function<void(const std::string& component, std::size
 /// `spectra`: all on one axis; `reference`: holds the columns that the recipe names. A spectrum
 /// belongs to sample_of(id, recipe.replicate_mark). Rows of the table without spectra, and spectra
 /// without a row, take no part and are named in a warning.
-/// Throws Error(Usage) if windows, steps or folds do not fit the data, Error(Input) if an excluded
-/// sample or spectrum does not exist or too few standards are left, Error(Numerical) if a fit is
-/// impossible; the field names the component, or the spectrum that cannot be pretreated.
+/// Throws Error(Usage) if windows, steps or folds do not fit the data or an excluded sample or spectrum
+/// does not exist, Error(Input) if too few standards are left, Error(Numerical) if a fit is impossible;
+/// the field names the component, the window, the exclusion, or the spectrum that cannot be pretreated.
 /// Results do not depend on the number of workers, bit for bit.
-[[nodiscard]] Model build_model(const Recipe& recipe, const SpectraSet& spectra, const ReferenceTable& reference,
-                                WorkerPool& pool, const BuildProgress& progress = {});
+[[nodiscard]] Model build_model(const Recipe& recipe, const SpectraSet& spectra,
+                                const ReferenceTable& reference, WorkerPool& pool,
+                                const BuildProgress& progress = {});
 
 /// The chain that a recipe asks for one component on this axis, defaults and overrides resolved.
-[[nodiscard]] CalibrationRecipe resolve(const Recipe& recipe, const ComponentRecipe& component, const Axis& axis);
+[[nodiscard]] CalibrationRecipe resolve(const Recipe& recipe, const ComponentRecipe& component,
+                                        const Axis& axis);
 
 }  // namespace bandwright

@@ -9,17 +9,17 @@ namespace bandwright {
 
 /// What kind of number a statistic is; decides its unit and digits for people.
 enum class Quantity {
-  ComponentUnit,    ///< in the unit of the component, with the decimals of its error
-  SquaredUnit,      ///< in the square of that unit
-  Ratio,            ///< without unit, four decimals
-  Count,            ///< whole number
-  FreeScale,        ///< no unit or an inner one, four significant digits
+  ComponentUnit,  ///< in the unit of the component, with the decimals of its error
+  SquaredUnit,    ///< in the square of that unit
+  Ratio,          ///< without unit, four decimals
+  Count,          ///< whole number
+  FreeScale,      ///< no unit or an inner one, four significant digits
 };
 
 /// One statistic that users see: the one place for its name, digits, definition and source.
 struct Statistic {
-  std::string_view key;         ///< in JSON and model files
-  std::string_view label;       ///< in tables and reports
+  std::string_view key;    ///< in JSON and model files
+  std::string_view label;  ///< in tables and reports
   Quantity quantity;
   std::string_view definition;  ///< plain words and formula
   std::string_view source;      ///< of the formula

@@ -13,7 +13,8 @@ namespace {
 const ComponentRecipe& asked_for(const Recipe& recipe, const std::string& name) {
   const auto found = std::find_if(recipe.components.begin(), recipe.components.end(),
                                   [&](const ComponentRecipe& c) { return c.name == name; });
-  if (found == recipe.components.end()) throw Error(ErrorKind::Internal, "no recipe for component \"" + name + "\"");
+  if (found == recipe.components.end())
+    throw Error(ErrorKind::Internal, "no recipe for component \"" + name + "\"");
   return *found;
 }
 
@@ -33,7 +34,8 @@ double reference_error(const LabError& lab_error, double value) {
   return std::hypot(lab_error.absolute, lab_error.relative * value);
 }
 
-Uncertainty uncertainty_of(const ComponentModel& component, const Recipe& recipe, double value, double leverage) {
+Uncertainty uncertainty_of(const ComponentModel& component, const Recipe& recipe, double value,
+                           double leverage) {
   const ErrorScale scale = error_scale(component);
   const bool centred = component.recipe.scaling != Scaling::None;
   const double of_mean = centred ? 1.0 / static_cast<double>(component.statistics.samples) : 0.0;

@@ -75,7 +75,7 @@ struct StandardsEvidence {
   Vector leverage;         ///< without 1/n
   Vector t2;
   Vector q;
-  Vector studentised;      ///< residual / (SEC sqrt(1 - leverage - 1/n))
+  Vector studentised;  ///< residual / (SEC sqrt(1 - leverage - 1/n))
 };
 
 /// Errors on samples that had no part in the calibration.
@@ -113,8 +113,8 @@ struct Provenance {
   std::string plan_name;  ///< file name without folders
   std::string plan_text;  ///< as written
   std::vector<InputDigest> inputs;
-  std::string id;            ///< SHA-256 of plan, inputs and format version
-  std::string written_by;    ///< program version
+  std::string id;          ///< SHA-256 of plan, inputs and format version
+  std::string written_by;  ///< program version
 };
 
 /// Everything that applying, explaining and re-checking a calibration needs.

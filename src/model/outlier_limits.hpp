@@ -28,7 +28,8 @@ namespace bandwright {
 
 /// Q by the normal approximation of Jackson and Mudholkar, Technometrics 21 (1979) 341, from the
 /// eigenvalues of the residual covariance matrix. Not a number without residual.
-[[nodiscard]] double q_limit_jackson_mudholkar(std::span<const double> residual_eigenvalues, double significance);
+[[nodiscard]] double q_limit_jackson_mudholkar(std::span<const double> residual_eigenvalues,
+                                               double significance);
 
 /// Eigenvalues of E'E / (samples - 1), the non-zero ones by way of the smaller Gram matrix. E: residuals of
 /// the standards (n x p), rows already multiplied by the square roots of their weights.

@@ -39,7 +39,8 @@ struct LabError {
 
   template <class Visitor>
   static void describe(Visitor&& visit) {
-    visit("absolute", &LabError::absolute, at_least(0), "standard deviation at a value of 0, in the unit of the component");
+    visit("absolute", &LabError::absolute, at_least(0),
+          "standard deviation at a value of 0, in the unit of the component");
     visit("relative", &LabError::relative, at_least(0), "part in proportion to the value: 0.02 = 2 %");
   }
 };
@@ -51,7 +52,8 @@ struct Pretreatment {
   template <class Visitor>
   static void describe(Visitor&& visit) {
     visit("steps", &Pretreatment::steps, any_value(), "what is done to each spectrum, in this order");
-    visit("scaling", &Pretreatment::scaling, any_value(), "what is done to each variable before the regression");
+    visit("scaling", &Pretreatment::scaling, any_value(),
+          "what is done to each variable before the regression");
   }
 };
 
@@ -63,7 +65,8 @@ struct RegressionRecipe {
   template <class Visitor>
   static void describe(Visitor&& visit) {
     visit("kind", &RegressionRecipe::kind, any_value(), "kind of regression");
-    visit("factors", &RegressionRecipe::factors, between(1, 1000), "a number of factors, or the rule that chooses it");
+    visit("factors", &RegressionRecipe::factors, between(1, 1000),
+          "a number of factors, or the rule that chooses it");
     visit("max_factors", &RegressionRecipe::max_factors, between(1, 1000),
           "the error curve is computed up to this number, also when factors is a number");
   }
@@ -87,10 +90,13 @@ struct ComponentRecipe {
   template <class Visitor>
   static void describe(Visitor&& visit) {
     visit("name", &ComponentRecipe::name, any_value(), "how results call the component");
-    visit("column", &ComponentRecipe::column, any_value(), "column of the reference table; default: the name");
-    visit("unit", &ComponentRecipe::unit, any_value(), "unit of the reference values; default: the one in the heading");
+    visit("column", &ComponentRecipe::column, any_value(),
+          "column of the reference table; default: the name");
+    visit("unit", &ComponentRecipe::unit, any_value(),
+          "unit of the reference values; default: the one in the heading");
     visit("lab_error", &ComponentRecipe::lab_error, at_least(0),
-          "intermediate precision of the reported reference value: { absolute, relative }, a number, or a column's name");
+          "intermediate precision of the reported reference value: { absolute, relative }, a number, or a "
+          "column's name");
     visit("spec_min", &ComponentRecipe::spec_min, any_value(), "lower specification limit");
     visit("spec_max", &ComponentRecipe::spec_max, any_value(), "upper specification limit");
     visit("windows", &ComponentRecipe::windows, any_value(), "names of the windows used; default: all");
@@ -151,12 +157,13 @@ struct AcceptCriteria {
   std::optional<double> bias_margin;   ///< largest |bias| allowed
   std::optional<double> coverage_min;  ///< share of reference values inside their intervals
   std::optional<Index> n_min;
-  std::optional<double> range_min;     ///< share of the calibrated range that the set must span
+  std::optional<double> range_min;  ///< share of the calibrated range that the set must span
   std::optional<double> r2_min;
 
   template <class Visitor>
   static void describe(Visitor&& visit) {
-    visit("sep_max", &AcceptCriteria::sep_max, more_than(0), "largest SEP allowed, in the unit of the component");
+    visit("sep_max", &AcceptCriteria::sep_max, more_than(0),
+          "largest SEP allowed, in the unit of the component");
     visit("rmsep_max", &AcceptCriteria::rmsep_max, more_than(0), "largest RMSEP allowed");
     visit("bias_margin", &AcceptCriteria::bias_margin, more_than(0), "largest bias allowed, either sign");
     visit("coverage_min", &AcceptCriteria::coverage_min, between(0, 1),

@@ -19,7 +19,8 @@ constexpr std::size_t kNamesShown = 5;
 /// "S01, S02, S03, S04, S05 and 12 more"
 std::string some_of(const std::vector<std::string>& names) {
   std::string text;
-  for (std::size_t i = 0; i < std::min(names.size(), kNamesShown); ++i) text += (i == 0 ? "" : ", ") + names[i];
+  for (std::size_t i = 0; i < std::min(names.size(), kNamesShown); ++i)
+    text += (i == 0 ? "" : ", ") + names[i];
   if (names.size() > kNamesShown) text += fmt::format(" and {} more", names.size() - kNamesShown);
   return text;
 }
@@ -38,10 +39,12 @@ Excluded excluded_by(const Recipe& recipe, const SpectraSet& spectra, const Refe
     const bool by_sample = !exclusion.sample.empty();
     const std::string& name = by_sample ? exclusion.sample : exclusion.spectrum;
     if (!(by_sample ? known_samples : known_spectra).contains(name)) {
-      throw Error(ErrorKind::Input,
-                  fmt::format("the plan excludes {} \"{}\", which is not among the standards",
-                              by_sample ? "sample" : "spectrum", name),
-                  {.file = {}, .line = 0, .field = "[[exclude]]", .hint = "check the name, or remove the entry"});
+      throw Error(ErrorKind::Usage,
+                  fmt::format("there is no such {} among the standards", by_sample ? "sample" : "spectrum"),
+                  {.file = {},
+                   .line = 0,
+                   .field = fmt::format("[[exclude]] \"{}\"", name),
+                   .hint = "check the name, or remove the entry"});
     }
     (by_sample ? out.samples : out.spectra).insert(name);
   }
@@ -50,10 +53,12 @@ Excluded excluded_by(const Recipe& recipe, const SpectraSet& spectra, const Refe
 
 }  // namespace
 
-MatchedStandards match_standards(const Recipe& recipe, const SpectraSet& spectra, const ReferenceTable& reference) {
+MatchedStandards match_standards(const Recipe& recipe, const SpectraSet& spectra,
+                                 const ReferenceTable& reference) {
   const Excluded excluded = excluded_by(recipe, spectra, reference);
   std::unordered_map<std::string, Index> table_row;
-  for (std::size_t i = 0; i < reference.samples.size(); ++i) table_row.emplace(reference.samples[i], static_cast<Index>(i));
+  for (std::size_t i = 0; i < reference.samples.size(); ++i)
+    table_row.emplace(reference.samples[i], static_cast<Index>(i));
 
   std::vector<std::pair<Index, Index>> used;  // spectrum row, table row
   std::vector<std::string> without_reference;
@@ -72,7 +77,10 @@ MatchedStandards match_standards(const Recipe& recipe, const SpectraSet& spectra
   }
   if (used.empty()) {
     throw Error(ErrorKind::Input, "no spectrum belongs to a sample of the reference table",
-                {.file = {}, .line = 0, .field = {}, .hint = "compare the names; replicate spectra need the key replicate"});
+                {.file = {},
+                 .line = 0,
+                 .field = {},
+                 .hint = "compare the names; replicate spectra need the key replicate"});
   }
 
   MatchedStandards matched;
@@ -94,7 +102,8 @@ MatchedStandards match_standards(const Recipe& recipe, const SpectraSet& spectra
   const auto warn_unused = [&](const std::vector<std::string>& names, const char* one, const char* several) {
     if (names.empty()) return;
     const auto count = static_cast<Index>(names.size());
-    matched.warnings.push_back({fmt::format("not used: {}: {}", counted(count, one, several), some_of(names)), {}, 0});
+    matched.warnings.push_back(
+        {fmt::format("not used: {}: {}", counted(count, one, several), some_of(names)), {}, 0});
   };
   warn_unused(without_reference, "spectrum without a row in the reference table",
               "spectra without a row in the reference table");
@@ -103,11 +112,13 @@ MatchedStandards match_standards(const Recipe& recipe, const SpectraSet& spectra
   return matched;
 }
 
-TrainingData training_data(const MatchedStandards& matched, const SpectraSet& spectra, const ReferenceColumn& column,
-                           std::vector<Index>& rows) {
+TrainingData training_data(const MatchedStandards& matched, const SpectraSet& spectra,
+                           const ReferenceColumn& column, std::vector<Index>& rows) {
   rows.clear();
   std::vector<Index> spectra_of_sample(matched.table_rows.size());
-  const auto value_of = [&](Index sample) { return column.values[matched.table_rows[static_cast<std::size_t>(sample)]]; };
+  const auto value_of = [&](Index sample) {
+    return column.values[matched.table_rows[static_cast<std::size_t>(sample)]];
+  };
   for (std::size_t u = 0; u < matched.spectrum_rows.size(); ++u) {
     const Index sample = matched.sample_of_spectrum[u];
     if (std::isnan(value_of(sample))) continue;
@@ -115,8 +126,11 @@ TrainingData training_data(const MatchedStandards& matched, const SpectraSet& sp
     ++spectra_of_sample[static_cast<std::size_t>(sample)];
   }
   const auto n = static_cast<Index>(rows.size());
-  TrainingData data{.axis = spectra.axis, .spectra = Matrix(n, spectra.points()), .reference = Vector(n),
-                    .sample_of_row = {}, .row_weights = Vector(n)};
+  TrainingData data{.axis = spectra.axis,
+                    .spectra = Matrix(n, spectra.points()),
+                    .reference = Vector(n),
+                    .sample_of_row = {},
+                    .row_weights = Vector(n)};
   for (Index i = 0; i < n; ++i) {
     const auto u = static_cast<std::size_t>(rows[static_cast<std::size_t>(i)]);
     const Index sample = matched.sample_of_spectrum[u];

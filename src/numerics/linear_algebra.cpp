@@ -55,7 +55,7 @@ void use_one_blas_thread() {
 }
 
 LinearAlgebraInfo linear_algebra_info() {
-  constexpr int kPthreadBuild = 1;  // 0 serial, 2 OpenMP
+  constexpr int kPthreadBuild = 1;                  // 0 serial, 2 OpenMP
   std::istringstream words(openblas_get_config());  // "OpenBLAS 0.3.21 NO_LAPACKE DYNAMIC_ARCH ..."
   std::string name;
   std::string version;
@@ -78,7 +78,8 @@ void check_linear_algebra() {
   require_close(smaller_gram(A), A.lazyProduct(A.transpose()), "a symmetric product");
 
   const Matrix S = test_matrix(12, 9);
-  require_close(singular_values(S), Eigen::JacobiSVD<Eigen::MatrixXd>(S).singularValues(), "a singular value");
+  require_close(singular_values(S), Eigen::JacobiSVD<Eigen::MatrixXd>(S).singularValues(),
+                "a singular value");
   const Matrix G = S.transpose().lazyProduct(S);
   require_close(symmetric_eigenvalues(G), Eigen::SelfAdjointEigenSolver<Eigen::MatrixXd>(G).eigenvalues(),
                 "an eigenvalue");

@@ -22,7 +22,8 @@ void add_flag(std::vector<Flag>& flags, Flag flag) {
 }
 
 void flag_range(ComponentResult& result, const OutlierLimits& limits) {
-  if (result.value < limits.value_min || result.value > limits.value_max) add_flag(result.flags, Flag::OutsideRange);
+  if (result.value < limits.value_min || result.value > limits.value_max)
+    add_flag(result.flags, Flag::OutsideRange);
 }
 
 /// Interval and verdict follow from value, leverage and flags.
@@ -38,8 +39,8 @@ void conclude(ComponentResult& result, const Model& model, const ComponentModel&
   result.verdict = judge(result, model.asked(component), model.recipe.decision.risk);
 }
 
-ComponentResult component_result(const Model& model, const ComponentModel& component, const Projection& projection,
-                                 Index i, double largest_point) {
+ComponentResult component_result(const Model& model, const ComponentModel& component,
+                                 const Projection& projection, Index i, double largest_point) {
   ComponentResult result;
   result.value = projection.value[i];
   result.leverage = projection.leverage[i];
@@ -53,19 +54,22 @@ ComponentResult component_result(const Model& model, const ComponentModel& compo
 }
 
 /// Rows first .. first + count - 1 for all components. Throws if one of them cannot be treated.
-void predict_rows(const Model& model, const SpectraSet& spectra, Index first, Index count, std::vector<SpectrumResult>& out) {
+void predict_rows(const Model& model, const SpectraSet& spectra, Index first, Index count,
+                  std::vector<SpectrumResult>& out) {
   const auto rows = spectra.values.middleRows(first, count);
   for (const ComponentModel& component : model.components) {
     const Projection projection = project(component.calibration, rows, component.factors());
     for (Index i = 0; i < count; ++i) {
       const double largest = component.calibration.chain.largest_inside(row_of(rows, i));
-      out[static_cast<std::size_t>(first + i)].components.push_back(component_result(model, component, projection, i, largest));
+      out[static_cast<std::size_t>(first + i)].components.push_back(
+          component_result(model, component, projection, i, largest));
     }
   }
 }
 
 /// As predict_rows, but a spectrum that cannot be treated gets a reason instead of values.
-void predict_block(const Model& model, const SpectraSet& spectra, Index first, Index count, std::vector<SpectrumResult>& out) {
+void predict_block(const Model& model, const SpectraSet& spectra, Index first, Index count,
+                   std::vector<SpectrumResult>& out) {
   try {
     predict_rows(model, spectra, first, count, out);
     return;
@@ -86,7 +90,8 @@ void predict_block(const Model& model, const SpectraSet& spectra, Index first, I
 }
 
 /// The mean of a sample's usable replicates for the component at position c.
-ComponentResult mean_result(const Model& model, std::size_t c, const std::vector<const SpectrumResult*>& replicates) {
+ComponentResult mean_result(const Model& model, std::size_t c,
+                            const std::vector<const SpectrumResult*>& replicates) {
   ComponentResult mean_of;
   double smallest = std::numeric_limits<double>::infinity();
   double largest = -smallest;
@@ -109,14 +114,18 @@ ComponentResult mean_result(const Model& model, std::size_t c, const std::vector
 
 void check_measured_alike(const Model& model, const SpectraSet& spectra) {
   if (spectra.ordinate && *spectra.ordinate != model.ordinate)
-    throw Error(ErrorKind::Input, fmt::format("the spectra are in {}, the model was built on {}", text_of(*spectra.ordinate),
-                                              text_of(model.ordinate)));
+    throw Error(ErrorKind::Input, fmt::format("the spectra are in {}, the model was built on {}",
+                                              text_of(*spectra.ordinate), text_of(model.ordinate)));
   if (!model.axis.matches(spectra.axis)) {
-    const auto unit = [](const Axis& axis) { return axis.unit() ? " " + std::string(text_of(*axis.unit())) : std::string{}; };
-    throw Error(ErrorKind::Input,
-                fmt::format("the axis ({} points from {} to {}{}) is not that of the model ({} points from {} to {}{})",
-                            spectra.points(), spectra.axis[0], spectra.axis[spectra.points() - 1], unit(spectra.axis),
-                            model.axis.size(), model.axis[0], model.axis[model.axis.size() - 1], unit(model.axis)));
+    const auto unit = [](const Axis& axis) {
+      return axis.unit() ? " " + std::string(text_of(*axis.unit())) : std::string{};
+    };
+    throw Error(
+        ErrorKind::Input,
+        fmt::format(
+            "the axis ({} points from {} to {}{}) is not that of the model ({} points from {} to {}{})",
+            spectra.points(), spectra.axis[0], spectra.axis[spectra.points() - 1], unit(spectra.axis),
+            model.axis.size(), model.axis[0], model.axis[model.axis.size() - 1], unit(model.axis)));
   }
 }
 
@@ -124,7 +133,10 @@ Prediction predict(const Model& model, const SpectraSet& spectra, WorkerPool& po
   check_measured_alike(model, spectra);
   Prediction out;
   for (const std::string& id : spectra.ids)
-    out.spectra.push_back({.sample = sample_of(id, model.recipe.replicate_mark), .spectrum = id, .refused = {}, .components = {}});
+    out.spectra.push_back({.sample = sample_of(id, model.recipe.replicate_mark),
+                           .spectrum = id,
+                           .refused = {},
+                           .components = {}});
   constexpr Index kBlock = 32;  // rows a job; cut by the data, never by the number of workers
   const Index blocks = (spectra.size() + kBlock - 1) / kBlock;
   pool.for_each_index(static_cast<std::size_t>(blocks), [&](std::size_t b) {
@@ -156,7 +168,8 @@ std::vector<SampleResult> by_sample(const Model& model, const std::vector<Spectr
   for (std::size_t s = 0; s < samples.size(); ++s) {
     if (usable[s].empty()) continue;
     samples[s].refused.reset();
-    for (std::size_t c = 0; c < model.components.size(); ++c) samples[s].components.push_back(mean_result(model, c, usable[s]));
+    for (std::size_t c = 0; c < model.components.size(); ++c)
+      samples[s].components.push_back(mean_result(model, c, usable[s]));
   }
   return samples;
 }

@@ -17,18 +17,19 @@ namespace bandwright {
 
 /// Why a result must not be trusted.
 enum class Flag {
-  OutsideRange,      ///< the value lies outside the calibrated range
-  UnlikeStandards,   ///< T2 above its limit
-  Unexplained,       ///< Q above its limit
-  Saturated,         ///< a point inside the windows is above max_absorbance
+  OutsideRange,     ///< the value lies outside the calibrated range
+  UnlikeStandards,  ///< T2 above its limit
+  Unexplained,      ///< Q above its limit
+  Saturated,        ///< a point inside the windows is above max_absorbance
 };
 
 template <>
 struct EnumTexts<Flag> {
-  static constexpr std::array entries{std::pair{Flag::OutsideRange, std::string_view{"outside range"}},
-                                      std::pair{Flag::UnlikeStandards, std::string_view{"unlike the standards"}},
-                                      std::pair{Flag::Unexplained, std::string_view{"unexplained spectrum"}},
-                                      std::pair{Flag::Saturated, std::string_view{"saturated"}}};
+  static constexpr std::array entries{
+      std::pair{Flag::OutsideRange, std::string_view{"outside range"}},
+      std::pair{Flag::UnlikeStandards, std::string_view{"unlike the standards"}},
+      std::pair{Flag::Unexplained, std::string_view{"unexplained spectrum"}},
+      std::pair{Flag::Saturated, std::string_view{"saturated"}}};
 };
 
 /// Judgement by spectrum against the specification limits, with a guard band. Never a release.
@@ -90,7 +91,8 @@ struct Prediction {
 void check_measured_alike(const Model& model, const SpectraSet& spectra);
 
 /// Samples out of spectrum records; `spectra` may hold refused records from elsewhere.
-[[nodiscard]] std::vector<SampleResult> by_sample(const Model& model, const std::vector<SpectrumResult>& spectra);
+[[nodiscard]] std::vector<SampleResult> by_sample(const Model& model,
+                                                  const std::vector<SpectrumResult>& spectra);
 
 /// Verdict for a value with standard error s: within when value + w <= spec_max and value - w >=
 /// spec_min, outside when value - w > spec_max or value + w < spec_min, else too close;

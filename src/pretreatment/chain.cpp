@@ -66,16 +66,20 @@ void PretreatmentChain::check_fit(const Axis& axis) const {
       for (const PreparedSavitzkyGolay& filter : filters_) {
         if (filter.weights.size() == 0) continue;
         if (segment.extent() < filter.weights.rows())
-          refuse_window(layout_[w].name, fmt::format("the stretch from {} to {} has {} points; savitzky-golay needs {}",
-                                                     from, to, segment.extent(), filter.weights.rows()));
-        if (point_steps_[w][s] == 0.0)
           refuse_window(layout_[w].name,
-                        fmt::format("the points from {} to {} are not evenly spaced; savitzky-golay needs that", from, to));
+                        fmt::format("the stretch from {} to {} has {} points; savitzky-golay needs {}", from,
+                                    to, segment.extent(), filter.weights.rows()));
+        if (point_steps_[w][s] == 0.0)
+          refuse_window(
+              layout_[w].name,
+              fmt::format("the points from {} to {} are not evenly spaced; savitzky-golay needs that", from,
+                          to));
       }
     }
     const bool has_snv = std::any_of(steps_.begin(), steps_.end(),
                                      [](const Step& step) { return std::holds_alternative<Snv>(step); });
-    if (has_snv && layout_[w].core_points() < 2) refuse_window(layout_[w].name, "snv needs at least two points");
+    if (has_snv && layout_[w].core_points() < 2)
+      refuse_window(layout_[w].name, "snv needs at least two points");
   }
 }
 
@@ -91,8 +95,10 @@ void PretreatmentChain::smooth(const PreparedSavitzkyGolay& filter, WindowBuffer
     const double unit = std::pow(buffer.point_steps[s], -static_cast<double>(filter.derivative));
     for (Index i = 0; i < extent; ++i) {
       const Index window_start = std::clamp<Index>(i - h, 0, extent - m);
-      const std::span<const double> points{buffer.values.data() + at + window_start, static_cast<std::size_t>(m)};
-      buffer.scratch[static_cast<std::size_t>(at + i)] = dot(row_of(filter.weights, i - window_start), points) * unit;
+      const std::span<const double> points{buffer.values.data() + at + window_start,
+                                           static_cast<std::size_t>(m)};
+      buffer.scratch[static_cast<std::size_t>(at + i)] =
+          dot(row_of(filter.weights, i - window_start), points) * unit;
     }
     at += extent;
   }
@@ -113,8 +119,9 @@ void PretreatmentChain::standardise(WindowBuffer& buffer) {
   // Rounding alone gives a constant stretch a spread of some 1e-16 of its height.
   constexpr double kRounding = 1e-14;
   if (!(spread > kRounding * std::abs(centre)))
-    throw Error(ErrorKind::Numerical,
-                fmt::format("snv cannot be computed: the spectrum is constant in window \"{}\"", buffer.layout.name));
+    throw Error(
+        ErrorKind::Numerical,
+        fmt::format("snv cannot be computed: the spectrum is constant in window \"{}\"", buffer.layout.name));
   for (double& value : buffer.values) value = (value - centre) / spread;
 }
 

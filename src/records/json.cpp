@@ -8,8 +8,10 @@
 #include <limits>
 #include <nlohmann/json.hpp>
 #include <set>
+#include <utility>
 
 #include "base/error.hpp"
+#include "base/number_text.hpp"
 #include "base/options.hpp"
 
 namespace bandwright {
@@ -66,6 +68,48 @@ class StrictParse {
 
   std::vector<OpenObject> open_;
 };
+
+/// A text, a whole number, true, false or null, by the library; its doubles are not always the shortest.
+std::string scalar_text(const Json& value) {
+  try {
+    return value.dump();
+  } catch (const Json::type_error&) {
+    throw Error(ErrorKind::Input, "a text is not UTF-8 and cannot be written");
+  }
+}
+
+/// The shortest text that reads back as the same double, and as a double: with a point or an exponent.
+std::string double_text(double value) {
+  std::string text = exact_text(value);
+  return text.find_first_of(".e") == std::string::npos ? text + ".0" : text;
+}
+
+/// Members or entries between brackets, with commas.
+template <class Range, class Append>
+void append_all(std::string& out, char open, char close, const Range& range, Append&& append) {
+  out += open;
+  bool first = true;
+  for (const auto& item : range) {
+    if (!std::exchange(first, false)) out += ',';
+    append(item);
+  }
+  out += close;
+}
+
+void append_text(std::string& out, const Json& value) {
+  if (value.is_object()) {
+    append_all(out, '{', '}', value.items(), [&](const auto& member) {
+      out += scalar_text(Json(member.key())) + ":";
+      append_text(out, member.value());
+    });
+  } else if (value.is_array()) {
+    append_all(out, '[', ']', value, [&](const Json& entry) { append_text(out, entry); });
+  } else if (value.is_number_float()) {
+    out += double_text(value.get<double>());
+  } else {
+    out += scalar_text(value);
+  }
+}
 
 }  // namespace
 
@@ -220,11 +264,9 @@ Json json_rows(const MatrixView& values) {
 }
 
 std::string json_text(const Json& value) {
-  try {
-    return value.dump();
-  } catch (const Json::type_error&) {
-    throw Error(ErrorKind::Input, "a text is not UTF-8 and cannot be written");
-  }
+  std::string out;
+  append_text(out, value);
+  return out;
 }
 
 }  // namespace bandwright

@@ -92,7 +92,8 @@ class JsonValue {
 /// One list a row.
 [[nodiscard]] Json json_rows(const MatrixView& values);
 
-/// The value on one line, UTF-8 as it stands. Throws Error(Input) if a text in it is not UTF-8.
+/// The value on one line, UTF-8 as it stands, each double as the shortest text that reads back as it. Throws
+/// Error(Input) if a text in it is not UTF-8.
 [[nodiscard]] std::string json_text(const Json& value);
 
 }  // namespace bandwright

@@ -305,13 +305,17 @@ void read_interval(const TomlTable& top, Plan& plan) {
       lacking += fmt::format("{}{}", lacking.empty() ? "" : ", ", quoted(component.name));
   }
   if (!lacking.empty())
-    table->refuse_key("about", "\"true\" needs the lab_error of every component; it is missing for " + lacking,
+    table->refuse_key("about",
+                      "\"true\" needs the lab_error of every component; it is missing for " + lacking,
                       "add lab_error, or write about = \"reference\"");
   for (const ComponentRecipe& component : plan.recipe.components) {
     if (!component.lab_error.column.empty())
-      table->refuse_key("about", fmt::format("\"true\" needs lab_error as numbers; for {} it is a column, which says nothing of "
-                                             "new samples", quoted(component.name)),
-                        "write lab_error = { absolute = ..., relative = ... }");
+      table->refuse_key(
+          "about",
+          fmt::format("\"true\" needs lab_error as numbers; for {} it is a column, which says nothing of "
+                      "new samples",
+                      quoted(component.name)),
+          "write lab_error = { absolute = ..., relative = ... }");
   }
 }
 

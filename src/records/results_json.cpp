@@ -1,26 +1,17 @@
 // SPDX-License-Identifier: Apache-2.0
 #include "records/results_json.hpp"
 
-#include <cmath>
 #include <nlohmann/json.hpp>
 
 #include "model/interval.hpp"
+#include "records/json.hpp"
 
 namespace bandwright {
 namespace {
 
-using Json = nlohmann::ordered_json;
-
 constexpr int kResultFormat = 1;
 
-Json number(double value) { return std::isfinite(value) ? Json(value) : Json(nullptr); }
-Json number(const std::optional<double>& value) { return value ? number(*value) : Json(nullptr); }
-
-Json numbers(const VectorView& values) {
-  Json list = Json::array();
-  for (Index i = 0; i < values.size(); ++i) list.push_back(number(values[i]));
-  return list;
-}
+Json number_if_any(const std::optional<double>& value) { return value ? json_number(*value) : Json(nullptr); }
 
 Json texts(const std::vector<Warning>& warnings) {
   Json list = Json::array();
@@ -40,7 +31,7 @@ Json document(const Model& model, const ResultHeader& header) {
       {"model", {{"file", header.model_file}, {"id", model.provenance.id}, {"title", model.recipe.title}}}};
 }
 
-std::string finished(const Json& json) { return json.dump() + "\n"; }
+std::string finished(const Json& json) { return json_text(json) + "\n"; }
 
 Json choices_of(const FactorDecision& decision) {
   Json choices = Json::object();
@@ -53,10 +44,10 @@ Json curve_of(const ComponentModel& component) {
   Json curve = Json::array();
   for (const CurvePoint& point : component.curve)
     curve.push_back({{"factors", point.factors},
-                     {"rmsec", number(point.rmsec)},
-                     {"rmsecv", number(point.rmsecv)},
-                     {"press", number(point.press)},
-                     {"bias_cv", number(point.bias_cv)}});
+                     {"rmsec", json_number(point.rmsec)},
+                     {"rmsecv", json_number(point.rmsecv)},
+                     {"press", json_number(point.press)},
+                     {"bias_cv", json_number(point.bias_cv)}});
   return curve;
 }
 
@@ -71,33 +62,33 @@ Json component_summary(const ComponentModel& component) {
           {"factors_by_rule", choices_of(component.decision)},
           {"samples", s.samples},
           {"spectra", s.spectra},
-          {"rmsec", number(s.rmsec)},
-          {"sec", number(s.sec)},
-          {"rmsecv", number(s.rmsecv)},
-          {"press", number(s.press)},
-          {"bias_cv", number(s.bias_cv)},
-          {"secv", number(s.secv)},
-          {"r2", number(s.r2)},
-          {"r2_cv", number(s.r2_cv)},
+          {"rmsec", json_number(s.rmsec)},
+          {"sec", json_number(s.sec)},
+          {"rmsecv", json_number(s.rmsecv)},
+          {"press", json_number(s.press)},
+          {"bias_cv", json_number(s.bias_cv)},
+          {"secv", json_number(s.secv)},
+          {"r2", json_number(s.r2)},
+          {"r2_cv", json_number(s.r2_cv)},
           {"curve", curve_of(component)}};
 }
 
 Json limits_of(const OutlierLimits& limits) {
-  return {{"value_min", number(limits.value_min)},
-          {"value_max", number(limits.value_max)},
-          {"t2_limit", number(limits.t2)},
-          {"t2_limit_calibration", number(limits.t2_calibration)},
-          {"q_limit", number(limits.q)},
-          {"q_limit_calibration", number(limits.q_calibration)},
-          {"q_limit_jackson_mudholkar", number(limits.q_jackson_mudholkar)},
-          {"leverage_max", number(limits.leverage_max)}};
+  return {{"value_min", json_number(limits.value_min)},
+          {"value_max", json_number(limits.value_max)},
+          {"t2_limit", json_number(limits.t2)},
+          {"t2_limit_calibration", json_number(limits.t2_calibration)},
+          {"q_limit", json_number(limits.q)},
+          {"q_limit_calibration", json_number(limits.q_calibration)},
+          {"q_limit_jackson_mudholkar", json_number(limits.q_jackson_mudholkar)},
+          {"leverage_max", json_number(limits.leverage_max)}};
 }
 
 Json coefficients_of(const ComponentModel& component) {
   const Calibration& calibration = component.calibration;
-  return {{"axis", numbers(calibration.chain.positions())},
-          {"values", numbers(calibration.coefficients(component.factors()))},
-          {"intercept", number(calibration.intercept(component.factors()))}};
+  return {{"axis", json_list(calibration.chain.positions())},
+          {"values", json_list(calibration.coefficients(component.factors()))},
+          {"intercept", json_number(calibration.intercept(component.factors()))}};
 }
 
 /// One value a standard spectrum of the model; null where the component has no reference value.
@@ -106,7 +97,7 @@ Json spread_over_spectra(const Model& model, const StandardsEvidence& evidence, 
   std::size_t next = 0;
   for (const std::string& id : model.spectrum_ids) {
     const bool served = next < evidence.spectrum_ids.size() && evidence.spectrum_ids[next] == id;
-    list.push_back(served ? number(values[static_cast<Index>(next)]) : Json(nullptr));
+    list.push_back(served ? json_number(values[static_cast<Index>(next)]) : Json(nullptr));
     if (served) ++next;
   }
   return list;
@@ -127,21 +118,21 @@ Json component_record(const ComponentModel& component, const Recipe& recipe, con
   for (const Flag flag : result.flags) flags.push_back(text_of(flag));
   return {{"name", component.name},
           {"unit", component.unit},
-          {"value", number(result.value)},
-          {"low", number(result.low)},
-          {"high", number(result.high)},
-          {"level", number(recipe.interval.level)},
+          {"value", json_number(result.value)},
+          {"low", json_number(result.low)},
+          {"high", json_number(result.high)},
+          {"level", json_number(recipe.interval.level)},
           {"about", text_of(recipe.interval.about)},
-          {"standard_error", number(result.standard_error)},
+          {"standard_error", json_number(result.standard_error)},
           {"interval_floored", result.interval_floored},
-          {"leverage", number(result.leverage)},
-          {"t2", number(result.t2)},
-          {"t2_limit", number(component.limits.t2)},
-          {"q", number(result.q)},
-          {"q_limit", number(component.limits.q)},
+          {"leverage", json_number(result.leverage)},
+          {"t2", json_number(result.t2)},
+          {"t2_limit", json_number(component.limits.t2)},
+          {"q", json_number(result.q)},
+          {"q_limit", json_number(component.limits.q)},
           {"flags", flags},
           {"verdict", text_of(result.verdict)},
-          {"largest_difference", number(result.largest_difference)}};
+          {"largest_difference", number_if_any(result.largest_difference)}};
 }
 
 Json component_records(const Model& model, const std::vector<ComponentResult>& results) {
@@ -156,8 +147,8 @@ Json criteria_of(const ComponentValidation& component) {
   for (const CriterionOutcome& criterion : component.criteria)
     list.push_back({{"key", criterion.key},
                     {"statistic", criterion.statistic},
-                    {"value", number(criterion.value)},
-                    {"limit", number(criterion.limit)},
+                    {"value", json_number(criterion.value)},
+                    {"limit", json_number(criterion.limit)},
                     {"met", criterion.met}});
   return list;
 }
@@ -167,38 +158,38 @@ Json validation_record(const ComponentValidation& component) {
   Json record = {{"name", component.name},
                  {"unit", component.unit},
                  {"n", e.n},
-                 {"rmsep", number(e.rmsep)},
-                 {"sep", number(e.sep)},
-                 {"bias", number(e.bias)},
-                 {"slope", number(e.slope)},
-                 {"intercept", number(e.intercept)},
-                 {"r2", number(e.r2)},
-                 {"rpd", number(e.rpd)},
-                 {"rer", number(e.rer)},
-                 {"bias_t", number(e.bias_t)},
-                 {"bias_t_limit", number(e.bias_t_limit)},
-                 {"bias_p", number(e.bias_p)},
-                 {"bias_limit", number(e.bias_limit)},
-                 {"sep_limit", number(component.sep_limit)},
-                 {"slope_t", number(e.slope_t)},
-                 {"slope_t_limit", number(e.slope_t_limit)},
-                 {"slope_low", number(e.slope_low)},
-                 {"slope_high", number(e.slope_high)},
-                 {"line_residual_sd", number(e.line_residual_sd)},
-                 {"joint_f", number(e.joint_f)},
-                 {"joint_f_limit", number(e.joint_f_limit)},
-                 {"concordance", number(e.concordance)},
-                 {"correlation_squared", number(e.correlation_squared)},
-                 {"equivalence_p", number(component.equivalence_p)},
-                 {"rmsep_corrected", number(component.rmsep_corrected)},
-                 {"coverage", number(component.coverage)},
-                 {"range_share", number(component.range_share)},
+                 {"rmsep", json_number(e.rmsep)},
+                 {"sep", json_number(e.sep)},
+                 {"bias", json_number(e.bias)},
+                 {"slope", json_number(e.slope)},
+                 {"intercept", json_number(e.intercept)},
+                 {"r2", json_number(e.r2)},
+                 {"rpd", json_number(e.rpd)},
+                 {"rer", json_number(e.rer)},
+                 {"bias_t", json_number(e.bias_t)},
+                 {"bias_t_limit", json_number(e.bias_t_limit)},
+                 {"bias_p", json_number(e.bias_p)},
+                 {"bias_limit", json_number(e.bias_limit)},
+                 {"sep_limit", json_number(component.sep_limit)},
+                 {"slope_t", json_number(e.slope_t)},
+                 {"slope_t_limit", json_number(e.slope_t_limit)},
+                 {"slope_low", json_number(e.slope_low)},
+                 {"slope_high", json_number(e.slope_high)},
+                 {"line_residual_sd", json_number(e.line_residual_sd)},
+                 {"joint_f", json_number(e.joint_f)},
+                 {"joint_f_limit", json_number(e.joint_f_limit)},
+                 {"concordance", json_number(e.concordance)},
+                 {"correlation_squared", json_number(e.correlation_squared)},
+                 {"equivalence_p", number_if_any(component.equivalence_p)},
+                 {"rmsep_corrected", number_if_any(component.rmsep_corrected)},
+                 {"coverage", json_number(component.coverage)},
+                 {"range_share", json_number(component.range_share)},
                  {"flagged", component.flagged},
                  {"criteria", criteria_of(component)},
                  {"verdict", verdict_text(component.passed())}};
   record["samples"] = component.samples;
-  record["reference"] = numbers(component.reference);
-  record["predicted"] = numbers(component.predicted);
+  record["reference"] = json_list(component.reference);
+  record["predicted"] = json_list(component.predicted);
   return record;
 }
 
@@ -280,16 +271,16 @@ std::string model_json(const Model& model, const std::string& content_digest, co
     const ErrorScale scale = error_scale(component);
     record["interval"] = {{"level", model.recipe.interval.level},
                           {"about", text_of(model.recipe.interval.about)},
-                          {"standard_deviation", number(scale.value)},
-                          {"degrees_of_freedom", number(scale.degrees_of_freedom)},
+                          {"standard_deviation", json_number(scale.value)},
+                          {"degrees_of_freedom", json_number(scale.degrees_of_freedom)},
                           {"basis", scale.basis == ErrorBasis::Calibration ? "sec" : "sep"}};
     record["coefficients"] = coefficients_of(component);
     record["validation"] = nullptr;
     if (component.validation)
       record["validation"] = {{"samples", component.validation->samples},
-                              {"rmsep", number(component.validation->rmsep)},
-                              {"sep", number(component.validation->sep)},
-                              {"bias", number(component.validation->bias)},
+                              {"rmsep", json_number(component.validation->rmsep)},
+                              {"sep", json_number(component.validation->sep)},
+                              {"bias", json_number(component.validation->bias)},
                               {"set_sha256", component.validation->set_digest}};
     json["components"].push_back(std::move(record));
   }

@@ -24,7 +24,8 @@ void check_input(const MatrixView& X, const VectorView& y, const VectorView& row
   const auto refuse = [](std::string message) { throw Error(ErrorKind::Input, std::move(message)); };
   if (X.rows() == 0 || X.cols() == 0) refuse("a regression needs at least one spectrum and one point");
   if (y.size() != X.rows() || row_weights.size() != X.rows())
-    refuse(fmt::format("{} spectra, but {} reference values and {} weights", X.rows(), y.size(), row_weights.size()));
+    refuse(fmt::format("{} spectra, but {} reference values and {} weights", X.rows(), y.size(),
+                       row_weights.size()));
   if (max_factors < 1) refuse("a regression needs at least one factor");
   if (!X.allFinite() || !y.allFinite() || !row_weights.allFinite())
     refuse("a regression needs finite spectra, reference values and weights");
@@ -32,7 +33,7 @@ void check_input(const MatrixView& X, const VectorView& y, const VectorView& row
 
 /// Removes from v its part along the rows of Q (orthonormal) and returns the coefficients.
 Vector orthogonalise(Vector& v, const MatrixView& Q) {
-  const Vector along = multiply(Q, v);
+  Vector along = multiply(Q, v);
   v -= multiply_transposed(Q, along);
   return along;
 }

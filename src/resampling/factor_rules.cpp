@@ -10,7 +10,7 @@
 namespace bandwright {
 namespace {
 
-constexpr double kEqual = 1e-9;           // values this close, relative, count as equal
+constexpr double kEqual = 1e-9;             // values this close, relative, count as equal
 constexpr double kFTestProbability = 0.75;  // alpha = 0.25, Haaland and Thomas
 
 Vector column(const MatrixView& matrix, Index k) { return matrix.col(k); }

@@ -49,7 +49,8 @@ Fold fold_of(const Units& units, const std::vector<Index>& order, Index first, I
 }
 
 /// `order` cut into `folds` consecutive parts, the first (units mod folds) one unit longer.
-void add_blocks(std::vector<Fold>& out, const Units& units, const std::vector<Index>& order, Index folds, Index repeat) {
+void add_blocks(std::vector<Fold>& out, const Units& units, const std::vector<Index>& order, Index folds,
+                Index repeat) {
   const auto count = static_cast<Index>(order.size());
   Index first = 0;
   for (Index f = 0; f < folds; ++f) {
@@ -74,15 +75,19 @@ std::vector<Index> dealt_out(Index count, Index folds) {
 }
 
 void check_options_fit(const CrossValidation& options, FoldScheme scheme, Index units, bool has_groups) {
-  if (units < 2) refuse("scheme", fmt::format("{} {} cannot be split", units, has_groups ? "group(s)" : "sample(s)"));
+  if (units < 2)
+    refuse("scheme", fmt::format("{} {} cannot be split", units, has_groups ? "group(s)" : "sample(s)"));
   if (scheme == FoldScheme::LeaveGroupOut && !has_groups)
     refuse("scheme", "leave-group-out needs [standards] group");
-  const bool counted = scheme == FoldScheme::Blocks || scheme == FoldScheme::Interleaved || scheme == FoldScheme::Random;
+  const bool counted =
+      scheme == FoldScheme::Blocks || scheme == FoldScheme::Interleaved || scheme == FoldScheme::Random;
   if (counted && options.folds > units)
-    refuse("folds", fmt::format("{} folds, but only {} {}", options.folds, units, has_groups ? "groups" : "samples"));
+    refuse("folds",
+           fmt::format("{} folds, but only {} {}", options.folds, units, has_groups ? "groups" : "samples"));
   const bool by_chance = scheme == FoldScheme::Random || scheme == FoldScheme::MonteCarlo;
   if (!by_chance && options.repeats > 1)
-    refuse("repeats", fmt::format("{} gives the same folds every time; only random and monte-carlo repeat", text_of(scheme)));
+    refuse("repeats", fmt::format("{} gives the same folds every time; only random and monte-carlo repeat",
+                                  text_of(scheme)));
 }
 
 }  // namespace
@@ -91,7 +96,8 @@ FoldScheme scheme_in_force(const CrossValidation& options, bool has_groups) {
   return options.scheme.value_or(has_groups ? FoldScheme::LeaveGroupOut : FoldScheme::LeaveOneOut);
 }
 
-std::vector<Fold> make_folds(const CrossValidation& options, Index samples, const std::vector<std::string>& groups) {
+std::vector<Fold> make_folds(const CrossValidation& options, Index samples,
+                             const std::vector<std::string>& groups) {
   const bool has_groups = !groups.empty();
   const FoldScheme scheme = scheme_in_force(options, has_groups);
   const Units units = units_of(samples, groups);
@@ -117,7 +123,8 @@ std::vector<Fold> make_folds(const CrossValidation& options, Index samples, cons
       }
       break;
     case FoldScheme::MonteCarlo: {
-      const auto wanted = static_cast<Index>(std::lround(options.share_left_out * static_cast<double>(count)));
+      const auto wanted =
+          static_cast<Index>(std::lround(options.share_left_out * static_cast<double>(count)));
       const Index left_out = std::clamp<Index>(wanted, 1, count - 1);
       for (Index draw = 0; draw < options.folds * options.repeats; ++draw) {
         Random random(static_cast<std::uint64_t>(options.seed), static_cast<std::uint64_t>(draw));

@@ -30,15 +30,16 @@ struct EnumTexts<FoldScheme> {
 struct CrossValidation {
   /// Default: leave-group-out when the standards have groups, else leave-one-out.
   std::optional<FoldScheme> scheme;
-  Index folds = 10;               ///< blocks, interleaved, random: number of folds; monte-carlo: of draws
-  Index repeats = 1;              ///< random: how often with new folds; monte-carlo: times `folds` draws
-  Index seed = 1;                 ///< random and monte-carlo: same seed, same folds
-  double share_left_out = 0.25;   ///< monte-carlo: share of the samples (or groups) left out in a draw
+  Index folds = 10;              ///< blocks, interleaved, random: number of folds; monte-carlo: of draws
+  Index repeats = 1;             ///< random: how often with new folds; monte-carlo: times `folds` draws
+  Index seed = 1;                ///< random and monte-carlo: same seed, same folds
+  double share_left_out = 0.25;  ///< monte-carlo: share of the samples (or groups) left out in a draw
 
   template <class Visitor>
   static void describe(Visitor&& visit) {
     visit("scheme", &CrossValidation::scheme, any_value(),
-          "how samples are held out; default leave-group-out where the standards have groups, else leave-one-out");
+          "how samples are held out; default leave-group-out where the standards have groups, else "
+          "leave-one-out");
     visit("folds", &CrossValidation::folds, between(2, 100000),
           "number of folds (blocks, interleaved, random) or of draws (monte-carlo)");
     visit("repeats", &CrossValidation::repeats, between(1, 100000), "repeats with new random folds");

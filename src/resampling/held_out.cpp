@@ -60,7 +60,8 @@ FoldResult run_fold(const CalibrationRecipe& recipe, const TrainingData& data, c
 /// Factor numbers a fold can speak for: its own, or any if it ended because nothing was left.
 Index usable_factors(const FoldResult& fold, const CalibrationRecipe& recipe) {
   const bool complete = fold.factors >= recipe.max_factors;
-  const auto rank = static_cast<Index>(std::lround(fold.training_samples)) - (recipe.scaling == Scaling::None ? 0 : 1);
+  const auto rank =
+      static_cast<Index>(std::lround(fold.training_samples)) - (recipe.scaling == Scaling::None ? 0 : 1);
   return complete || fold.factors < rank ? recipe.max_factors : fold.factors;
 }
 
@@ -115,12 +116,17 @@ HeldOut refit_folds(const CalibrationRecipe& recipe, const TrainingData& data, c
   for (std::size_t f = 0; f < folds.size(); ++f)
     for (std::size_t i = 0; i < results[f].rows.size(); ++i)
       order.push_back({folds[f].repeat, results[f].rows[i], f, static_cast<Index>(i)});
-  std::sort(order.begin(), order.end(),
-            [](const Entry& a, const Entry& b) { return std::pair(a.repeat, a.row) < std::pair(b.repeat, b.row); });
+  std::sort(order.begin(), order.end(), [](const Entry& a, const Entry& b) {
+    return std::pair(a.repeat, a.row) < std::pair(b.repeat, b.row);
+  });
 
   const auto rows = static_cast<Index>(order.size());
-  HeldOut out{.row = {}, .repeat = {}, .predicted = Matrix(rows, factors), .t2 = Matrix(rows, factors),
-              .q = Matrix(rows, factors), .repeats = repeats};
+  HeldOut out{.row = {},
+              .repeat = {},
+              .predicted = Matrix(rows, factors),
+              .t2 = Matrix(rows, factors),
+              .q = Matrix(rows, factors),
+              .repeats = repeats};
   for (Index e = 0; e < rows; ++e) {
     const Entry& entry = order[static_cast<std::size_t>(e)];
     const FoldResult& fold = results[entry.fold];
@@ -140,7 +146,8 @@ Matrix squared_errors_by_sample(const HeldOut& held_out, const TrainingData& dat
   std::unordered_map<Index, Index> row_of_sample;
   std::vector<Index> sample_order;
   for (const Index sample : data.sample_of_row)
-    if (row_of_sample.emplace(sample, static_cast<Index>(sample_order.size())).second) sample_order.push_back(sample);
+    if (row_of_sample.emplace(sample, static_cast<Index>(sample_order.size())).second)
+      sample_order.push_back(sample);
 
   const auto samples = static_cast<Index>(sample_order.size());
   Matrix squares = Matrix::Zero(samples, held_out.factors());

@@ -50,7 +50,8 @@ using Progress = std::function<void(std::size_t done, std::size_t total)>;
 /// nothing was left to explain keeps its last prediction.
 /// Throws Error(Numerical) if a fold leaves fewer than two samples to train on.
 [[nodiscard]] HeldOut refit_folds(const CalibrationRecipe& recipe, const TrainingData& data,
-                                  const std::vector<Fold>& folds, WorkerPool& pool, const Progress& progress = {});
+                                  const std::vector<Fold>& folds, WorkerPool& pool,
+                                  const Progress& progress = {});
 
 /// Squared held-out errors by sample, mean over the sample's replicates and the repeats: m x a, rows
 /// in order of the sample's first spectrum; samples never held out have no row.

@@ -11,7 +11,9 @@
 namespace bandwright {
 namespace {
 
-ErrorContext at(const Origin& origin) { return {.file = origin.file, .line = origin.line, .field = {}, .hint = {}}; }
+ErrorContext at(const Origin& origin) {
+  return {.file = origin.file, .line = origin.line, .field = {}, .hint = {}};
+}
 
 void check_unique_ids(const SpectraSet& spectra) {
   std::unordered_map<std::string_view, Index> seen;
@@ -33,12 +35,12 @@ void check_same_kind(const SpectraSet& first, const SpectraSet& part) {
                            .field = {},
                            .hint = "all spectra of one set need the same axis and ordinate"};
   if (!first.axis.matches(part.axis)) {
-    throw Error(ErrorKind::Input,
-                fmt::format("the axis ({} points from {} to {}) differs from that of {} ({} points from {} to {})",
-                            part.points(), part.axis[0], part.axis[part.points() - 1],
-                            first.origins.front().file, first.points(), first.axis[0],
-                            first.axis[first.points() - 1]),
-                where);
+    throw Error(
+        ErrorKind::Input,
+        fmt::format("the axis ({} points from {} to {}) differs from that of {} ({} points from {} to {})",
+                    part.points(), part.axis[0], part.axis[part.points() - 1], first.origins.front().file,
+                    first.points(), first.axis[0], first.axis[first.points() - 1]),
+        where);
   }
   if (first.ordinate != part.ordinate)
     throw Error(ErrorKind::Input, "the ordinate differs from that of " + first.origins.front().file, where);
@@ -69,7 +71,8 @@ SpectraSet joined(std::vector<SpectraSet> parts) {
 }
 
 SpectraSet subset(const SpectraSet& spectra, const std::vector<Index>& rows) {
-  SpectraSet chosen{.axis = spectra.axis, .ordinate = spectra.ordinate, .ids = {}, .origins = {}, .values = {}};
+  SpectraSet chosen{
+      .axis = spectra.axis, .ordinate = spectra.ordinate, .ids = {}, .origins = {}, .values = {}};
   chosen.values.resize(static_cast<Index>(rows.size()), spectra.points());
   for (std::size_t i = 0; i < rows.size(); ++i) {
     chosen.values.row(static_cast<Index>(i)) = spectra.values.row(rows[i]);
@@ -84,8 +87,8 @@ std::string sample_of(std::string_view spectrum_id, std::string_view mark) {
   const auto at = spectrum_id.rfind(mark);
   if (at == std::string_view::npos || at == 0) return std::string(spectrum_id);
   const std::string_view number = spectrum_id.substr(at + mark.size());
-  const bool digits = !number.empty() && std::all_of(number.begin(), number.end(),
-                                                     [](char c) { return c >= '0' && c <= '9'; });
+  const bool digits = !number.empty() &&
+                      std::all_of(number.begin(), number.end(), [](char c) { return c >= '0' && c <= '9'; });
   return std::string(digits ? spectrum_id.substr(0, at) : spectrum_id);
 }
 

@@ -21,10 +21,12 @@ constexpr double kNone = std::numeric_limits<double>::quiet_NaN();
 
 void check_sizes(const VectorView& reference, const VectorView& predicted, Index fewest) {
   if (reference.size() != predicted.size())
-    throw Error(ErrorKind::Input, fmt::format("{} reference values, but {} predicted ones", reference.size(), predicted.size()));
+    throw Error(ErrorKind::Input, fmt::format("{} reference values, but {} predicted ones", reference.size(),
+                                              predicted.size()));
   if (reference.size() < fewest)
-    throw Error(ErrorKind::Input, fmt::format("predicted and reference values exist for {}; at least {} are needed",
-                                              counted(reference.size(), "sample", "samples"), fewest));
+    throw Error(ErrorKind::Input,
+                fmt::format("predicted and reference values exist for {}; at least {} are needed",
+                            counted(reference.size(), "sample", "samples"), fewest));
 }
 
 double spread(const VectorView& values) { return sum_of_squared_deviations(values_of(values)); }
@@ -45,7 +47,8 @@ void add_bias_test(ErrorStatistics& s) {
 }
 
 void add_slope_test(ErrorStatistics& s, const VectorView& reference, const VectorView& predicted) {
-  s.slope = s.intercept = s.line_residual_sd = s.slope_t = s.slope_t_limit = s.slope_low = s.slope_high = kNone;
+  s.slope = s.intercept = s.line_residual_sd = s.slope_t = s.slope_t_limit = s.slope_low = s.slope_high =
+      kNone;
   if (s.n < 3 || !(spread(predicted) > 0.0)) return;
   const LinearFit line = fit_line(predicted, reference);
   s.intercept = line.coefficients[0];

@@ -55,9 +55,9 @@ struct CorrectionTests {
   double rss_bias = 0.0;
   double rss_slope = 0.0;  ///< slope and bias
   double f_bias = 0.0;
-  double f_bias_limit = 0.0;  ///< F(0.95; 1, n - 1)
-  double f_slope = 0.0;       ///< slope given bias
-  double f_slope_limit = 0.0; ///< F(0.95; 1, n - 2)
+  double f_bias_limit = 0.0;   ///< F(0.95; 1, n - 1)
+  double f_slope = 0.0;        ///< slope given bias
+  double f_slope_limit = 0.0;  ///< F(0.95; 1, n - 2)
 };
 /// Needs n >= 3.
 [[nodiscard]] CorrectionTests correction_tests(const VectorView& reference, const VectorView& predicted);

@@ -25,17 +25,22 @@ LinearFit fit_linear(const MatrixView& X, const VectorView& y) {
   const Index n = X.rows();
   const Index p = X.cols();
   if (y.size() != n || n <= p || p == 0)
-    throw Error(ErrorKind::Input, fmt::format("a least-squares fit of {} coefficients needs more than {} values; there are {}", p, p, n));
+    throw Error(ErrorKind::Input,
+                fmt::format("a least-squares fit of {} coefficients needs more than {} values; there are {}",
+                            p, p, n));
   Vector lengths(p);
   Matrix scaled(n, p);
   for (Index j = 0; j < p; ++j) {
     const Vector column = X.col(j);
     lengths[j] = std::sqrt(squared_norm(values_of(column)));
-    if (lengths[j] == 0.0) throw Error(ErrorKind::Numerical, "the columns of a least-squares problem are linearly dependent");
+    if (lengths[j] == 0.0)
+      throw Error(ErrorKind::Numerical, "the columns of a least-squares problem are linearly dependent");
     scaled.col(j) = column / lengths[j];
   }
   const Vector target = y;
-  const auto solve = [&](const Vector& right_side) { return Vector(least_squares(scaled, Matrix(right_side)).col(0)); };
+  const auto solve = [&](const Vector& right_side) {
+    return Vector(least_squares(scaled, Matrix(right_side)).col(0));
+  };
   Vector b = solve(target);
   b += solve(target - scaled.lazyProduct(b));  // one step of refinement
   // The columns have length 1, so X'X of a few of them is well conditioned enough for standard errors.
@@ -47,7 +52,8 @@ LinearFit fit_linear(const MatrixView& X, const VectorView& y) {
   fit.residual_sd = std::sqrt(fit.rss / fit.degrees_of_freedom);
   fit.coefficients = b.cwiseQuotient(lengths);
   fit.standard_errors.resize(p);
-  for (Index j = 0; j < p; ++j) fit.standard_errors[j] = fit.residual_sd * std::sqrt(inverse(j, j)) / lengths[j];
+  for (Index j = 0; j < p; ++j)
+    fit.standard_errors[j] = fit.residual_sd * std::sqrt(inverse(j, j)) / lengths[j];
   return fit;
 }
 

@@ -7,9 +7,9 @@ namespace bandwright {
 
 /// Ordinary least squares of y on the columns of a design matrix.
 struct LinearFit {
-  Vector coefficients;      ///< p
-  Vector standard_errors;   ///< p
-  double residual_sd = 0.0; ///< sqrt(RSS / (n - p))
+  Vector coefficients;       ///< p
+  Vector standard_errors;    ///< p
+  double residual_sd = 0.0;  ///< sqrt(RSS / (n - p))
   double rss = 0.0;
   double degrees_of_freedom = 0.0;  ///< n - p
 };

@@ -23,7 +23,10 @@ void refuse_standards(const Model& model, const std::vector<SampleResult>& sampl
   for (const SampleResult& sample : samples) {
     if (!standards.contains(sample.sample)) continue;
     throw Error(ErrorKind::Input, fmt::format("sample \"{}\" is one of the model's standards", sample.sample),
-                {.file = {}, .line = 0, .field = {}, .hint = "an independent set must hold no sample of the calibration"});
+                {.file = {},
+                 .line = 0,
+                 .field = {},
+                 .hint = "an independent set must hold no sample of the calibration"});
   }
 }
 
@@ -38,23 +41,29 @@ void refuse_unusable(const Prediction& prediction, const SpectraSet& spectra) {
 
 /// Is the reference value inside the interval? An interval about the true value is widened by the
 /// reference method's error, which the reference value carries.
-bool covers(const Model& model, const ComponentModel& component, const ComponentResult& result, double reference) {
+bool covers(const Model& model, const ComponentModel& component, const ComponentResult& result,
+            double reference) {
   double half_width = result.high - result.value;
   if (model.recipe.interval.about == IntervalAbout::True) {
     const double lab = reference_error(model.asked(component).lab_error, reference);
-    half_width = t_two_sided(model.recipe.interval.level, result.degrees_of_freedom) * std::hypot(result.standard_error, lab);
+    half_width = t_two_sided(model.recipe.interval.level, result.degrees_of_freedom) *
+                 std::hypot(result.standard_error, lab);
   }
   return std::abs(reference - result.value) <= half_width;
 }
 
 /// Standard deviation of the reference value in this row of the table, by numbers or by column.
-double reference_error_of_row(const LabError& lab_error, const ReferenceTable& reference, Index row, double value) {
+double reference_error_of_row(const LabError& lab_error, const ReferenceTable& reference, Index row,
+                              double value) {
   if (lab_error.column.empty()) return reference_error(lab_error, value);
   const double error = reference.column(lab_error.column).values[row];
   if (std::isfinite(error) && error >= 0.0) return error;
   const Origin& origin = reference.origins[static_cast<std::size_t>(row)];
   throw Error(ErrorKind::Input, "the standard deviation of the reference value is missing or negative",
-              {.file = origin.file, .line = origin.line, .field = fmt::format("column \"{}\"", lab_error.column), .hint = {}});
+              {.file = origin.file,
+               .line = origin.line,
+               .field = fmt::format("column \"{}\"", lab_error.column),
+               .hint = {}});
 }
 
 void judge_criteria(ComponentValidation& component, const AcceptCriteria& accept) {
@@ -76,7 +85,8 @@ void judge_criteria(ComponentValidation& component, const AcceptCriteria& accept
   if (accept.bias_margin) component.equivalence_p = equivalence_p(e, *accept.bias_margin);
 }
 
-ComponentValidation validate_component(const Model& model, std::size_t c, const std::vector<SampleResult>& samples,
+ComponentValidation validate_component(const Model& model, std::size_t c,
+                                       const std::vector<SampleResult>& samples,
                                        const std::unordered_map<std::string, std::size_t>& sample_position,
                                        const ReferenceTable& reference) {
   const ComponentModel& fitted = model.components[c];
@@ -101,15 +111,19 @@ ComponentValidation validate_component(const Model& model, std::size_t c, const 
     if (covers(model, fitted, result, value)) ++covered;
     if (!result.flags.empty()) ++out.flagged;
   }
-  out.reference = Eigen::Map<const Vector>(reference_values.data(), static_cast<Index>(reference_values.size()));
-  out.predicted = Eigen::Map<const Vector>(predicted_values.data(), static_cast<Index>(predicted_values.size()));
+  out.reference =
+      Eigen::Map<const Vector>(reference_values.data(), static_cast<Index>(reference_values.size()));
+  out.predicted =
+      Eigen::Map<const Vector>(predicted_values.data(), static_cast<Index>(predicted_values.size()));
   out.errors = error_statistics(out.reference, out.predicted);
   out.sep_limit = sep_limit(fitted.statistics.sec, fitted.statistics.sec_df, out.errors.n);
   out.coverage = static_cast<double>(covered) / static_cast<double>(out.errors.n);
-  out.range_share = (out.errors.reference_max - out.errors.reference_min) / (fitted.limits.value_max - fitted.limits.value_min);
+  out.range_share = (out.errors.reference_max - out.errors.reference_min) /
+                    (fitted.limits.value_max - fitted.limits.value_min);
   if (lab_error.given())
     out.rmsep_corrected = corrected_rmsep(
-        out.errors.rmsep, Eigen::Map<const Vector>(reference_errors.data(), static_cast<Index>(reference_errors.size())));
+        out.errors.rmsep,
+        Eigen::Map<const Vector>(reference_errors.data(), static_cast<Index>(reference_errors.size())));
   judge_criteria(out, model.recipe.accept.for_component(fitted.name));
   return out;
 }
@@ -122,11 +136,14 @@ std::vector<Warning> warnings_about(const Model& model, const std::vector<Compon
   std::vector<Warning> warnings;
   for (std::size_t c = 0; c < components.size(); ++c) {
     const ComponentValidation& component = components[c];
-    const auto warn = [&](std::string text) { warnings.push_back({component.name + ": " + std::move(text), {}, 0}); };
+    const auto warn = [&](std::string text) {
+      warnings.push_back({component.name + ": " + std::move(text), {}, 0});
+    };
     const Index asked = samples_asked_for(model.components[c].factors());
     if (component.errors.n < asked)
-      warn(fmt::format("{}; infrared practice asks for {} or more with {}", counted(component.errors.n, "sample", "samples"),
-                       asked, counted(model.components[c].factors(), "factor", "factors")));
+      warn(fmt::format("{}; infrared practice asks for {} or more with {}",
+                       counted(component.errors.n, "sample", "samples"), asked,
+                       counted(model.components[c].factors(), "factor", "factors")));
     if (component.flagged > 0)
       warn(fmt::format("flagged, and counted in: {} of {}", component.flagged,
                        counted(component.errors.n, "sample", "samples")));
@@ -148,7 +165,8 @@ std::optional<bool> Validation::passed() const {
   return all;
 }
 
-Validation validate(const Model& model, const SpectraSet& spectra, const ReferenceTable& reference, WorkerPool& pool) {
+Validation validate(const Model& model, const SpectraSet& spectra, const ReferenceTable& reference,
+                    WorkerPool& pool) {
   Validation out;
   out.prediction = predict(model, spectra, pool);
   refuse_unusable(out.prediction, spectra);
@@ -171,15 +189,23 @@ Validation validate(const Model& model, const SpectraSet& spectra, const Referen
 
   for (std::size_t c = 0; c < model.components.size(); ++c) {
     try {
-      out.components.push_back(validate_component(model, c, out.prediction.samples, with_reference, reference));
+      out.components.push_back(
+          validate_component(model, c, out.prediction.samples, with_reference, reference));
     } catch (const Error& error) {
-      throw error.within({.file = {}, .line = 0, .field = fmt::format("component \"{}\"", model.components[c].name), .hint = {}});
+      throw error.within({.file = {},
+                          .line = 0,
+                          .field = fmt::format("component \"{}\"", model.components[c].name),
+                          .hint = {}});
     }
   }
   out.warnings = warnings_about(model, out.components);
   if (!without_row.empty())
-    out.warnings.push_back({fmt::format("not tested: {} without a row in the reference table, the first is \"{}\"",
-                                        counted(static_cast<Index>(without_row.size()), "sample", "samples"), without_row.front()), {}, 0});
+    out.warnings.push_back(
+        {fmt::format("not tested: {} without a row in the reference table, the first is \"{}\"",
+                     counted(static_cast<Index>(without_row.size()), "sample", "samples"),
+                     without_row.front()),
+         {},
+         0});
   return out;
 }
 

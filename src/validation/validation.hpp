@@ -31,14 +31,14 @@ struct ComponentValidation {
   std::string unit;
   std::vector<std::string> samples;  ///< with a reference value, in the order of the reference table
   Vector reference;
-  Vector predicted;                  ///< mean of the sample's replicates
+  Vector predicted;  ///< mean of the sample's replicates
   ErrorStatistics errors;
-  double sep_limit = 0.0;            ///< unexplained-error limit
+  double sep_limit = 0.0;  ///< unexplained-error limit
   double coverage = 0.0;
-  double range_share = 0.0;          ///< range of the set / calibrated range
-  std::optional<double> equivalence_p;  ///< when the plan has a bias margin
+  double range_share = 0.0;               ///< range of the set / calibrated range
+  std::optional<double> equivalence_p;    ///< when the plan has a bias margin
   std::optional<double> rmsep_corrected;  ///< without the reference method's error, when lab_error is given
-  Index flagged = 0;                 ///< samples with a flag; they are counted in, not left out
+  Index flagged = 0;                      ///< samples with a flag; they are counted in, not left out
   std::vector<CriterionOutcome> criteria;
 
   /// All criteria met; empty when there is none.
@@ -62,10 +62,11 @@ struct Validation {
 /// replicates).
 /// Throws Error(Input) if a sample is among the standards, a spectrum is refused, no spectrum has a
 /// row, or a component has fewer than two samples with a reference value.
-[[nodiscard]] Validation validate(const Model& model, const SpectraSet& spectra, const ReferenceTable& reference,
-                                  WorkerPool& pool);
+[[nodiscard]] Validation validate(const Model& model, const SpectraSet& spectra,
+                                  const ReferenceTable& reference, WorkerPool& pool);
 
 /// What the model keeps of a validation for its intervals.
-[[nodiscard]] IndependentError independent_error(const ComponentValidation& component, std::string set_digest);
+[[nodiscard]] IndependentError independent_error(const ComponentValidation& component,
+                                                 std::string set_digest);
 
 }  // namespace bandwright

@@ -134,10 +134,9 @@ TEST_F(DataRefusals, WindowBeyondTheAxis) {
 
 TEST_F(DataRefusals, ExclusionOfSomethingThatIsNotThere) {
   write_plan("typo.toml", "\"S13\"", "\"S31\"");
-  expect_refused({"calibrate", "typo.toml", "--out", "m.json"}, 3,
-                 "typo.toml: [[exclude]]: the plan excludes sample \"S31\", which is not among the standards "
-                 "(check the name, or "
-                 "remove the entry)");
+  expect_refused({"calibrate", "typo.toml", "--out", "m.json"}, 2,
+                 "typo.toml:13: [[exclude]] \"S31\": there is no such sample among the standards "
+                 "(check the name, or remove the entry)");
 }
 
 TEST_F(DataRefusals, ColumnThatTheReferenceTableLacks) {

@@ -30,7 +30,8 @@ TEST(Catalogue, EveryStatisticIsExplainedOnceWithItsSource) {
 TEST(Catalogue, NoSourceClaimsConformity) {
   for (const Statistic& s : catalogue()) {
     EXPECT_EQ(s.source.find("conform"), std::string_view::npos) << s.key;
-    const bool standard = s.source.find("ASTM") != std::string_view::npos || s.source.find("ISO") != std::string_view::npos;
+    const bool standard =
+        s.source.find("ASTM") != std::string_view::npos || s.source.find("ISO") != std::string_view::npos;
     EXPECT_TRUE(!standard || s.source.starts_with("formula of ")) << s.key;
   }
 }
@@ -57,14 +58,19 @@ TEST(Catalogue, UnknownKeyIsAFaultOfTheProgram) {
 
 std::string statistics_page() {
   std::string page =
-      "# Statistics\n\nEvery statistic that the program shows, in its own words. Errors are predicted - reference. \"From memory\" "
-      "means\nthat the formula was not checked against a copy of the document it comes from; \"common practice\" that no single\n"
-      "source is followed. Numbers are computed with these formulas; no conformity with any standard is claimed.\n\n"
+      "# Statistics\n\nEvery statistic that the program shows, in its own words. Errors are predicted - "
+      "reference. \"From memory\" "
+      "means\nthat the formula was not checked against a copy of the document it comes from; \"common "
+      "practice\" that no single\n"
+      "source is followed. Numbers are computed with these formulas; no conformity with any standard is "
+      "claimed.\n\n"
       "| statistic | key | definition | source |\n|---|---|---|---|\n";
   for (const Statistic& s : catalogue()) {
     std::string definition(s.definition);
-    for (std::size_t at = definition.find('|'); at != std::string::npos; at = definition.find('|', at + 2)) definition.insert(at, "\\");
-    page += "| " + std::string(s.label) + " | `" + std::string(s.key) + "` | " + definition + " | " + std::string(s.source) + " |\n";
+    for (std::size_t at = definition.find('|'); at != std::string::npos; at = definition.find('|', at + 2))
+      definition.insert(at, "\\");
+    page += "| " + std::string(s.label) + " | `" + std::string(s.key) + "` | " + definition + " | " +
+            std::string(s.source) + " |\n";
   }
   return page;
 }
@@ -74,7 +80,8 @@ TEST(Catalogue, DocumentationPageIsMadeFromIt) {
   if (std::getenv("BANDWRIGHT_REGENERATE") != nullptr) std::ofstream(path) << statistics_page();
   std::ostringstream text;
   text << std::ifstream(path).rdbuf();
-  EXPECT_EQ(text.str(), statistics_page()) << "run this test with BANDWRIGHT_REGENERATE=1 to write docs/statistics.md again";
+  EXPECT_EQ(text.str(), statistics_page())
+      << "run this test with BANDWRIGHT_REGENERATE=1 to write docs/statistics.md again";
 }
 
 }  // namespace

@@ -108,14 +108,15 @@ TEST(Standards, ExclusionsOfWhatDoesNotExistAreRefused) {
   const auto refused = [&](const Exclusion& exclusion) {
     Recipe recipe;
     recipe.exclusions = {exclusion};
-    return error_text(ErrorKind::Input, [&] { static_cast<void>(match_standards(recipe, spectra, table)); });
+    return error_text(ErrorKind::Usage, [&] { static_cast<void>(match_standards(recipe, spectra, table)); });
   };
   EXPECT_EQ(refused({"S13", "", "x"}),
-            "[[exclude]]: the plan excludes sample \"S13\", which is not among the standards (check the "
-            "name, or remove the entry)");
-  EXPECT_EQ(refused({"", "S13-r2", "x"}),
-            "[[exclude]]: the plan excludes spectrum \"S13-r2\", which is not among the standards (check the "
-            "name, or remove the entry)");
+            "[[exclude]] \"S13\": there is no such sample among the standards (check the name, or remove the "
+            "entry)");
+  EXPECT_EQ(
+      refused({"", "S13-r2", "x"}),
+      "[[exclude]] \"S13-r2\": there is no such spectrum among the standards (check the name, or remove the "
+      "entry)");
 }
 
 TEST(Standards, NoMatchAtAllIsRefused) {

@@ -33,7 +33,8 @@ TEST(Prediction, FindsTheCompositionOfNewSamples) {
   ASSERT_EQ(prediction.spectra.size(), 20U);
   for (std::size_t i = 0; i < 20; ++i)
     for (std::size_t c = 0; c < 2; ++c)  // five standard errors: no luck of the draw decides
-      EXPECT_NEAR(prediction.spectra[i].components[c].value, fresh.reference.columns[c].values[static_cast<Index>(i)],
+      EXPECT_NEAR(prediction.spectra[i].components[c].value,
+                  fresh.reference.columns[c].values[static_cast<Index>(i)],
                   5.0 * model.components[c].statistics.rmsecv);
 }
 
@@ -89,7 +90,8 @@ TEST(Prediction, RecordedValidationWidensIntervalsButNeverNarrowsThem) {
   const SpectraSet spectra = toy_set("N", 1, 1, 11).spectra;
   const double sec = model.components[0].statistics.sec;
   const double before = predict_alone(model, spectra).spectra[0].components[0].standard_error;
-  model.components[0].validation = IndependentError{.samples = 20, .rmsep = 0, .sep = 2.0 * sec, .bias = 0, .set_digest = {}};
+  model.components[0].validation =
+      IndependentError{.samples = 20, .rmsep = 0, .sep = 2.0 * sec, .bias = 0, .set_digest = {}};
   const double wider = predict_alone(model, spectra).spectra[0].components[0].standard_error;
   EXPECT_TRUE(expect_close(wider, 2.0 * before, kRoundOff));
   model.components[0].validation->sep = 0.5 * sec;
@@ -108,7 +110,8 @@ TEST(Prediction, IntervalAboutTheTrueValueTakesTheLabErrorOff) {
   const auto with = predict_alone(plain, spectra).spectra[0].components;
   const auto without = predict_alone(about_true, spectra).spectra[0].components;
   EXPECT_TRUE(expect_close(without[0].standard_error,
-                           std::sqrt(std::pow(with[0].standard_error, 2) - std::pow(0.6 * sec, 2)), kRoundOff));
+                           std::sqrt(std::pow(with[0].standard_error, 2) - std::pow(0.6 * sec, 2)),
+                           kRoundOff));
   EXPECT_FALSE(without[0].interval_floored);
   EXPECT_EQ(without[1].standard_error, 0.0);
   EXPECT_TRUE(without[1].interval_floored);
@@ -156,8 +159,10 @@ TEST(Prediction, SampleIsTheMeanOfItsReplicatesWithTheirLargestDifference) {
   const double b = prediction.spectra[1].components[0].value;
   const double c = prediction.spectra[2].components[0].value;
   EXPECT_TRUE(expect_close(prediction.samples[0].components[0].value, (a + b + c) / 3.0, kRoundOff));
-  EXPECT_EQ(prediction.samples[0].components[0].largest_difference, std::max({a, b, c}) - std::min({a, b, c}));
-  EXPECT_FALSE(predict_alone(model, toy_set("N", 1, 1, 15).spectra).samples[0].components[0].largest_difference);
+  EXPECT_EQ(prediction.samples[0].components[0].largest_difference,
+            std::max({a, b, c}) - std::min({a, b, c}));
+  EXPECT_FALSE(
+      predict_alone(model, toy_set("N", 1, 1, 15).spectra).samples[0].components[0].largest_difference);
 }
 
 TEST(Prediction, FlagOfOneReplicateIsAFlagOfTheSample) {
@@ -175,7 +180,8 @@ TEST(Prediction, SpectrumThatCannotBeTreatedIsRefusedAloneAndTheOthersGoOn) {
   fresh.spectra.values.row(1).setConstant(0.5);
   const Prediction prediction = predict_alone(model, fresh.spectra);
   EXPECT_FALSE(prediction.spectra[0].refused);
-  EXPECT_EQ(prediction.spectra[1].refused, "snv cannot be computed: the spectrum is constant in window \"high\"");
+  EXPECT_EQ(prediction.spectra[1].refused,
+            "snv cannot be computed: the spectrum is constant in window \"high\"");
   EXPECT_TRUE(prediction.spectra[1].components.empty());
   EXPECT_FALSE(prediction.spectra[2].refused);
   EXPECT_EQ(prediction.samples[1].replicates, 0);
@@ -193,7 +199,8 @@ TEST(Prediction, RefusesAnotherAxisOrOrdinate) {
     FAIL() << "a shifted axis was accepted";
   } catch (const Error& error) {
     EXPECT_STREQ(error.what(),
-                 "the axis (40 points from 1801 to 1645 cm-1) is not that of the model (40 points from 1800 to 1644 cm-1)");
+                 "the axis (40 points from 1801 to 1645 cm-1) is not that of the model (40 points from 1800 "
+                 "to 1644 cm-1)");
   }
   fresh = toy_set("N", 1, 1, 18);
   fresh.spectra.ordinate = Ordinate::Transmittance;

@@ -319,7 +319,8 @@ TEST(PlanRefusals, IntervalDecisionLimits) {
       "plan.toml:12: [interval] about: \"true\" needs the lab_error of every component; it is missing for "
       "\"fat\", \"protein\" (add lab_error, or write about = \"reference\")");
   EXPECT_EQ(refusal_of("lab_error = \"water_sd\"\n[interval]\nabout = \"true\"\n"),
-            "plan.toml:8: [interval] about: \"true\" needs lab_error as numbers; for \"water\" it is a column, which says "
+            "plan.toml:8: [interval] about: \"true\" needs lab_error as numbers; for \"water\" it is a "
+            "column, which says "
             "nothing of new samples (write lab_error = { absolute = ..., relative = ... })");
   EXPECT_EQ(refusal_of("[interval]\nlevel = 95\n"),
             "plan.toml:7: [interval] level: 95 must be between 0.5 and 1, ends excluded");

@@ -164,7 +164,8 @@ TEST(Plan, ComponentsArriveAsWritten) {
 
 TEST(Plan, LabErrorMayBeAColumnOfTheReferenceTable) {
   const Plan plan = parse_plan(
-      "[standards]\nspectra = [\"a.csv\"]\nreference = \"r.csv\"\n[[component]]\nname = \"water\"\nlab_error = \"water_sd\"\n",
+      "[standards]\nspectra = [\"a.csv\"]\nreference = \"r.csv\"\n[[component]]\nname = \"water\"\nlab_error "
+      "= \"water_sd\"\n",
       "plan.toml");
   EXPECT_EQ(plan.recipe.components[0].lab_error.column, "water_sd");
   EXPECT_TRUE(plan.recipe.components[0].lab_error.given());

@@ -19,6 +19,7 @@ struct Tolerance {
 
 /// ||got - want|| <= relative * ||want|| + absolute: for vectors whose single small entries carry no
 /// digits of their own (coefficients).
-::testing::AssertionResult expect_close_in_norm(const VectorView& got, const VectorView& want, Tolerance tolerance);
+::testing::AssertionResult expect_close_in_norm(const VectorView& got, const VectorView& want,
+                                                Tolerance tolerance);
 
 }  // namespace bandwright

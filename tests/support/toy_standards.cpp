@@ -25,7 +25,9 @@ double noise(Random& random) {
   return total * kNoise;
 }
 
-double band(double position, double centre, double width) { return std::exp(-std::pow((position - centre) / width, 2.0)); }
+double band(double position, double centre, double width) {
+  return std::exp(-std::pow((position - centre) / width, 2.0));
+}
 
 }  // namespace
 
@@ -65,7 +67,8 @@ Recipe toy_recipe() {
   recipe.components[0].name = "acid";
   recipe.components[0].spec_max = 1.2;
   recipe.components[1].name = "water";
-  recipe.windows = {{.name = "high", .from = 1800, .to = 1740, .except = {}}, {.name = "low", .from = 1736, .to = 1650, .except = {}}};
+  recipe.windows = {{.name = "high", .from = 1800, .to = 1740, .except = {}},
+                    {.name = "low", .from = 1736, .to = 1650, .except = {}}};
   recipe.regression.max_factors = 6;
   return recipe;
 }

@@ -16,7 +16,8 @@ namespace {
 
 // Twelve pairs worked in 60-digit arithmetic; the values below are printed to ten digits.
 constexpr Tolerance kPrinted{.relative = 2e-9, .absolute = 0.0};
-constexpr Tolerance kSevenDecimals{.relative = 0.0, .absolute = 5.1e-8};  // half a unit of the last one printed
+constexpr Tolerance kSevenDecimals{.relative = 0.0,
+                                   .absolute = 5.1e-8};  // half a unit of the last one printed
 // Another library's double precision.
 constexpr Tolerance kLibrary{.relative = 1e-8, .absolute = 1e-14};
 
@@ -50,8 +51,8 @@ TEST(ErrorStatistics, TwelvePairsGiveTheWorkedSlopeAndJointTests) {
   EXPECT_TRUE(expect_close(s.joint_f_limit, 4.1028210, kSevenDecimals));
   // The interval of the slope and its t test tell the same: it holds 1 exactly when t is below its limit.
   EXPECT_TRUE(s.slope_low < 1.0 && 1.0 < s.slope_high);
-  EXPECT_TRUE(expect_close((s.slope_high - s.slope_low) / 2.0 * s.slope_t, std::abs(s.slope - 1.0) * s.slope_t_limit,
-                           {.relative = 1e-12, .absolute = 0.0}));
+  EXPECT_TRUE(expect_close((s.slope_high - s.slope_low) / 2.0 * s.slope_t,
+                           std::abs(s.slope - 1.0) * s.slope_t_limit, {.relative = 1e-12, .absolute = 0.0}));
 }
 
 TEST(ErrorStatistics, JointTestTheOtherWayRoundGivesItsOwnWorkedValue) {
@@ -83,7 +84,8 @@ TEST(ErrorStatistics, SepLimitGivesBothWorkedForms) {
 
 TEST(ErrorStatistics, BiasLimitInUnitsOfSepGivesTheWorkedTable) {
   // t(0.975; n - 1) / sqrt(n), worked to four decimals.
-  const std::pair<Index, double> rows[] = {{5, 1.2417}, {10, 0.7154}, {15, 0.5538}, {20, 0.4680}, {30, 0.3734}, {50, 0.2842}};
+  const std::pair<Index, double> rows[] = {{5, 1.2417},  {10, 0.7154}, {15, 0.5538},
+                                           {20, 0.4680}, {30, 0.3734}, {50, 0.2842}};
   for (const auto& [n, want] : rows) {
     const Vector reference = Vector::LinSpaced(n, 0.0, 1.0);
     const Vector predicted = reference + Vector::LinSpaced(n, -1.0, 1.0);
@@ -149,8 +151,10 @@ TEST(ErrorStatistics, AgreesWithAGeneralStatisticsLibraryOnOpenData) {
     EXPECT_TRUE(expect_close(s.bias_t, std::abs(paired.at("t").get<double>()), kLibrary)) << set;
     EXPECT_TRUE(expect_close(s.bias_p, paired.at("p_two_sided").get<double>(), kLibrary)) << set;
     const auto& regression = json.at("regression_first_on_reference");
-    EXPECT_TRUE(expect_close(s.correlation_squared, regression.at("r_squared").get<double>(), kLibrary)) << set;
-    EXPECT_TRUE(expect_close(s.joint_f, regression.at("joint_f_intercept_0_slope_1").get<double>(), kLibrary)) << set;
+    EXPECT_TRUE(expect_close(s.correlation_squared, regression.at("r_squared").get<double>(), kLibrary))
+        << set;
+    EXPECT_TRUE(expect_close(s.joint_f, regression.at("joint_f_intercept_0_slope_1").get<double>(), kLibrary))
+        << set;
   }
 }
 

@@ -40,7 +40,8 @@ Dataset read_dataset(const std::string& name) {
     std::getline(cells, cell, ',');
     x.push_back(std::stod(cell));
   }
-  return {Eigen::Map<Vector>(x.data(), static_cast<Index>(x.size())), Eigen::Map<Vector>(y.data(), static_cast<Index>(y.size()))};
+  return {Eigen::Map<Vector>(x.data(), static_cast<Index>(x.size())),
+          Eigen::Map<Vector>(y.data(), static_cast<Index>(y.size()))};
 }
 
 struct Certified {
@@ -55,10 +56,12 @@ Certified read_certified(const std::string& name) {
   const auto vector_of = [&](const char* key) {
     const auto& list = certified.at(key);
     Vector values(static_cast<Index>(list.size()));
-    for (std::size_t i = 0; i < list.size(); ++i) values[static_cast<Index>(i)] = std::stod(list[i].get<std::string>());
+    for (std::size_t i = 0; i < list.size(); ++i)
+      values[static_cast<Index>(i)] = std::stod(list[i].get<std::string>());
     return values;
   };
-  return {vector_of("coefficients"), vector_of("standard_errors"), std::stod(certified.at("residual_sd").get<std::string>())};
+  return {vector_of("coefficients"), vector_of("standard_errors"),
+          std::stod(certified.at("residual_sd").get<std::string>())};
 }
 
 void expect_certified(const LinearFit& fit, const std::string& name, Tolerance tolerance) {
@@ -103,9 +106,9 @@ TEST(LinearFit, ResidualsAreOrthogonalToTheDesign) {
 
 TEST(LinearFit, RefusesWhatHasNoSolution) {
   const Vector two = Vector::Ones(2);
-  EXPECT_THROW(static_cast<void>(fit_line(two, two)), Error);             // no degrees of freedom
+  EXPECT_THROW(static_cast<void>(fit_line(two, two)), Error);  // no degrees of freedom
   const Vector four = Vector::Ones(4);
-  EXPECT_THROW(static_cast<void>(fit_line(four, four)), Error);           // x does not vary
+  EXPECT_THROW(static_cast<void>(fit_line(four, four)), Error);  // x does not vary
   EXPECT_THROW(static_cast<void>(fit_line(Vector::LinSpaced(4, 0, 1), two)), Error);
   try {
     static_cast<void>(fit_line(two, two));

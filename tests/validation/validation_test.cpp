@@ -25,10 +25,12 @@ TEST(Validation, StatisticsAreThoseOfTheSampleMeans) {
   const ComponentValidation& acid = validation.components[0];
   EXPECT_EQ(acid.errors.n, 25);  // samples, not the 50 spectra
   for (Index i = 0; i < 25; ++i)
-    EXPECT_EQ(acid.predicted[i], validation.prediction.samples[static_cast<std::size_t>(i)].components[0].value);
+    EXPECT_EQ(acid.predicted[i],
+              validation.prediction.samples[static_cast<std::size_t>(i)].components[0].value);
   const ErrorStatistics direct = error_statistics(set.reference.columns[0].values, acid.predicted);
   EXPECT_EQ(acid.errors.sep, direct.sep);
-  EXPECT_EQ(acid.sep_limit, sep_limit(model.components[0].statistics.sec, model.components[0].statistics.sec_df, 25));
+  EXPECT_EQ(acid.sep_limit,
+            sep_limit(model.components[0].statistics.sec, model.components[0].statistics.sec_df, 25));
 }
 
 TEST(Validation, CoverageCountsReferenceValuesInsideTheirIntervals) {
@@ -61,11 +63,24 @@ TEST(Validation, WithoutCriteriaNothingIsJudged) {
 
 TEST(Validation, PassesOnlyWhenEveryCriterionOfEveryComponentIsMet) {
   Recipe recipe = toy_recipe();
-  recipe.accept.all = {.sep_max = 1.0, .rmsep_max = {}, .bias_margin = 0.5, .coverage_min = 0.5, .n_min = 20, .range_min = 0.5, .r2_min = {}};
+  recipe.accept.all = {.sep_max = 1.0,
+                       .rmsep_max = {},
+                       .bias_margin = 0.5,
+                       .coverage_min = 0.5,
+                       .n_min = 20,
+                       .range_min = 0.5,
+                       .r2_min = {}};
   const ToySet set = toy_set("V", 25, 1, 25);
   EXPECT_EQ(validate_toy(toy_model(recipe), set).passed(), true);
 
-  recipe.accept.per_component = {{.component = "water", .criteria = {.sep_max = 1e-6, .rmsep_max = {}, .bias_margin = {}, .coverage_min = {}, .n_min = {}, .range_min = {}, .r2_min = {}}}};
+  recipe.accept.per_component = {{.component = "water",
+                                  .criteria = {.sep_max = 1e-6,
+                                               .rmsep_max = {},
+                                               .bias_margin = {},
+                                               .coverage_min = {},
+                                               .n_min = {},
+                                               .range_min = {},
+                                               .r2_min = {}}}};
   const Validation strict = validate_toy(toy_model(recipe), set);
   EXPECT_EQ(strict.components[0].passed(), true);
   EXPECT_EQ(strict.components[1].passed(), false);
@@ -92,7 +107,8 @@ TEST(Validation, BiasIsJudgedWithoutItsSign) {
 
 TEST(Validation, CorrectedRmsepGivesTheWorkedValue) {
   // RMSEP of twelve worked pairs with a reference error of 0.015 (60-digit arithmetic, ten printed).
-  EXPECT_TRUE(expect_close(corrected_rmsep(0.0254950976, Vector::Constant(12, 0.015)), 0.0206155, {.relative = 3e-6, .absolute = 0.0}));
+  EXPECT_TRUE(expect_close(corrected_rmsep(0.0254950976, Vector::Constant(12, 0.015)), 0.0206155,
+                           {.relative = 3e-6, .absolute = 0.0}));
   EXPECT_EQ(corrected_rmsep(0.01, Vector::Constant(5, 0.02)), 0.0);
 }
 
@@ -104,7 +120,8 @@ TEST(Validation, LabErrorMayStandInAColumnOfTheReferenceTable) {
   set.reference.columns.push_back({"acid_sd", "wt%", Vector::Constant(25, 1e-4)});
   const ComponentValidation acid = validate_toy(model, set).components[0];
   ASSERT_TRUE(acid.rmsep_corrected);
-  EXPECT_TRUE(expect_close(*acid.rmsep_corrected, std::sqrt(acid.errors.rmsep * acid.errors.rmsep - 1e-8), {.relative = 1e-12, .absolute = 0.0}));
+  EXPECT_TRUE(expect_close(*acid.rmsep_corrected, std::sqrt(acid.errors.rmsep * acid.errors.rmsep - 1e-8),
+                           {.relative = 1e-12, .absolute = 0.0}));
   EXPECT_FALSE(validate_toy(model, set).components[1].rmsep_corrected);  // water has no lab_error
   set.reference.columns[2].values[4] = std::numeric_limits<double>::quiet_NaN();
   try {
@@ -112,7 +129,8 @@ TEST(Validation, LabErrorMayStandInAColumnOfTheReferenceTable) {
     FAIL() << "a missing lab error was accepted";
   } catch (const Error& error) {
     EXPECT_STREQ(error.what(),
-                 "toy.csv:6: column \"acid_sd\": the standard deviation of the reference value is missing or negative");
+                 "toy.csv:6: column \"acid_sd\": the standard deviation of the reference value is missing or "
+                 "negative");
   }
 }
 
@@ -122,7 +140,8 @@ TEST(Validation, RefusesSamplesOfTheCalibration) {
     FAIL() << "standards were accepted as an independent set";
   } catch (const Error& error) {
     EXPECT_STREQ(error.what(),
-                 "sample \"S01\" is one of the model's standards (an independent set must hold no sample of the calibration)");
+                 "sample \"S01\" is one of the model's standards (an independent set must hold no sample of "
+                 "the calibration)");
   }
 }
 
@@ -138,7 +157,8 @@ TEST(Validation, WarnsOfTooFewSamplesAndOfFlags) {
   const Validation validation = validate_toy(toy_model(), set);
   ASSERT_GE(validation.warnings.size(), 2U);
   EXPECT_EQ(validation.warnings[0].text, "acid: 10 samples; infrared practice asks for 20 or more with " +
-                                             std::to_string(toy_model().components[0].factors()) + " factors");
+                                             std::to_string(toy_model().components[0].factors()) +
+                                             " factors");
   EXPECT_EQ(validation.warnings[1].text, "acid: flagged, and counted in: 1 of 10 samples");
 }
 
