@@ -78,8 +78,7 @@ void judge_criteria(ComponentValidation& component, const AcceptCriteria& accept
   at_most("rmsep_max", "rmsep", accept.rmsep_max, e.rmsep);
   at_most("bias_margin", "bias", accept.bias_margin, std::abs(e.bias));
   not_below("coverage_min", "coverage", accept.coverage_min, component.coverage);
-  const auto n_min = accept.n_min ? std::optional(static_cast<double>(*accept.n_min)) : std::nullopt;
-  not_below("n_min", "n", n_min, static_cast<double>(e.n));
+  if (accept.n_min) not_below("n_min", "n", static_cast<double>(*accept.n_min), static_cast<double>(e.n));
   not_below("range_min", "range_share", accept.range_min, component.range_share);
   not_below("r2_min", "r2", accept.r2_min, e.r2);
   if (accept.bias_margin) component.equivalence_p = equivalence_p(e, *accept.bias_margin);

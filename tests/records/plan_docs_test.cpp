@@ -12,12 +12,13 @@
 namespace bandwright {
 namespace {
 
+const std::string kReadme = std::string(BANDWRIGHT_TEST_DATA) + "/../../README.md";
 const std::string kPage = std::string(BANDWRIGHT_TEST_DATA) + "/../../docs/plan.md";
 constexpr std::string_view kBegin = "<!-- option tables: generated, do not edit -->\n";
 constexpr std::string_view kEnd = "<!-- end of the option tables -->\n";
 
-std::string read_page() {
-  std::ifstream file(kPage, std::ios::binary);
+std::string read_page(const std::string& path = kPage) {
+  std::ifstream file(path, std::ios::binary);
   std::ostringstream text;
   text << file.rdbuf();
   return text.str();
@@ -62,6 +63,14 @@ TEST(PlanDocs, EveryExampleIsAPlan) {
     EXPECT_FALSE(plan.recipe.title.empty());
     EXPECT_EQ(plan.recipe.components.size(), 3u);
   }
+}
+
+TEST(PlanDocs, TheTourInTheReadmeIsAPlan) {
+  const std::vector<std::string> plans = example_plans(read_page(kReadme));
+  ASSERT_EQ(plans.size(), 1u);
+  const Plan plan = parse_plan(plans[0], "README.md");
+  EXPECT_EQ(plan.recipe.windows.size(), 2u);
+  EXPECT_EQ(plan.recipe.components[0].spec_max, 0.30);
 }
 
 }  // namespace
