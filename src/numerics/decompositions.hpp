@@ -16,8 +16,8 @@ namespace bandwright {
 /// Eigenvalues of the symmetric matrix S, rising. Throws Error(Numerical) on failure.
 [[nodiscard]] Vector symmetric_eigenvalues(const MatrixView& S);
 
-/// The matrix C (p x m) that minimises ||A C - B||, by QR (by LU when A is square). A: n x p with n >= p and full rank,
-/// B: n x m. Throws Error(Numerical) if the columns of A are linearly dependent to rounding.
+/// The matrix C (p x m) that minimises ||A C - B||, by QR (by LU when A is square). A: n x p with n >= p and
+/// full rank, B: n x m. Throws Error(Numerical) if the columns of A are linearly dependent to rounding.
 [[nodiscard]] Matrix least_squares(const MatrixView& A, const MatrixView& B);
 
 /// Version of the library behind these functions.
