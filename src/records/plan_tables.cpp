@@ -158,9 +158,19 @@ void check_component(const TomlTable& table, const ComponentRecipe& component, c
   check_component_windows(table, component, recipe, window_names);
 }
 
+/// Does the option of that name have its default value?
+bool is_default(const CrossValidation& asked, std::string_view key) {
+  const CrossValidation defaults;
+  bool same = true;
+  CrossValidation::describe([&](std::string_view name, auto member, const Bounds&, std::string_view) {
+    if (name == key) same = asked.*member == defaults.*member;
+  });
+  return same;
+}
+
 /// Keys that mean something only with some schemes are refused with the others: who writes
-/// `folds = 10` beside leave-one-out expects ten folds.
-void check_scheme_keys(const TomlTable& table, FoldScheme scheme) {
+/// `folds = 5` beside leave-one-out expects five folds. A default written out asks for nothing.
+void check_scheme_keys(const TomlTable& table, const CrossValidation& asked, FoldScheme scheme) {
   using enum FoldScheme;
   const std::array<std::pair<std::string_view, std::vector<FoldScheme>>, 4> rules{{
       {"folds", {Blocks, Interleaved, Random, MonteCarlo}},
@@ -169,7 +179,9 @@ void check_scheme_keys(const TomlTable& table, FoldScheme scheme) {
       {"share_left_out", {MonteCarlo}},
   }};
   for (const auto& [key, schemes] : rules) {
-    if (!table.has(key) || std::find(schemes.begin(), schemes.end(), scheme) != schemes.end()) continue;
+    if (!table.has(key) || is_default(asked, key) ||
+        std::find(schemes.begin(), schemes.end(), scheme) != schemes.end())
+      continue;
     std::string names;
     for (const FoldScheme one : schemes)
       names += fmt::format("{}{}", names.empty() ? "" : ", ", text_of(one));
@@ -293,7 +305,7 @@ void read_cross_validation(const TomlTable& top, Plan& plan) {
     table->refuse_key("scheme", "leave-group-out needs to know the groups",
                       "[standards] group names the column of the reference table that holds them");
   }
-  check_scheme_keys(*table, scheme);
+  check_scheme_keys(*table, asked, scheme);
 }
 
 void read_interval(const TomlTable& top, Plan& plan) {

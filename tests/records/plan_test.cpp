@@ -326,6 +326,14 @@ TEST(Plan, WindowsLineEndsAndByteOrderMarkAreRead) {
   EXPECT_EQ(plan.recipe.components[0].name, "water");
 }
 
+TEST(Plan, DefaultsOfOtherSchemesMayBeWrittenOut) {
+  const Plan plan =
+      parse(kSmallest +
+            "[cross_validation]\nscheme = \"leave-one-out\"\nfolds = 10\nrepeats = 1\nseed = 1\n"
+            "share_left_out = 0.25\n");
+  EXPECT_EQ(plan.recipe.cross_validation.scheme, FoldScheme::LeaveOneOut);
+}
+
 TEST(Plan, NamesMayBeInAnyLanguage) {
   const Plan plan = parse(
       "[standards]\nspectra = [\"Spektren/größe.csv\"]\nreference = \"b\"\n"
