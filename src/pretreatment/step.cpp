@@ -10,9 +10,9 @@ namespace bandwright {
 namespace {
 
 /// Calls `visit` with a default-made step of every kind.
-template <class Visitor, std::size_t... kKinds>
-void for_each_kind(Visitor&& visit, std::index_sequence<kKinds...>) {
-  (visit(Step(std::in_place_index<kKinds>)), ...);
+template <class Visitor, std::size_t... Kinds>
+void for_each_kind(Visitor&& visit, std::index_sequence<Kinds...>) {
+  (visit(Step(std::in_place_index<Kinds>)), ...);
 }
 
 template <class Visitor>

@@ -100,6 +100,7 @@ TEST_F(Outputs, AKilledRunLeavesTheOldFileOrTheNewOne) {
 
 /// Ids may hold U+009B, which some terminals take for the start of a command, and DEL.
 TEST_F(Outputs, IdsCannotSteerATerminal) {
+  if (!has_pseudo_terminals()) GTEST_SKIP() << "no pseudo-terminal here";
   ASSERT_EQ(run(scratch, {"calibrate", "plan.toml", "--out", "model.json", "--quiet"}).status, 0);
   const std::string id =
       "e\xC2\x9B"
@@ -120,6 +121,7 @@ TEST_F(Outputs, IdsCannotSteerATerminal) {
 }
 
 TEST_F(Outputs, MessagesOnATerminalComeOneALine) {
+  if (!has_pseudo_terminals()) GTEST_SKIP() << "no pseudo-terminal here";
   const Outcome got = run(scratch, {"calibrate", "plan.toml", "--out", "model.json"},
                           {.environment = {{"TERM", "dumb"}}, .err = Output::Terminal});
   EXPECT_EQ(got.status, 0);

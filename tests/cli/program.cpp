@@ -15,6 +15,7 @@
 #include <cstdlib>
 #include <fstream>
 #include <iterator>
+#include <optional>
 #include <stdexcept>
 
 extern "C" char** environ;
@@ -152,15 +153,18 @@ Outcome run(const Scratch& scratch, const std::vector<std::string>& arguments, c
   const std::string in_file = (streams / "in").string();
   streams.write("in", options.input);
   CommandLine line = command_line(arguments, options);
-  Terminal terminal;
+  const bool on_terminal = options.out == Output::Terminal || options.err == Output::Terminal;
+  std::optional<Terminal> terminal;
+  if (on_terminal) terminal.emplace();
+  const int slave = terminal ? terminal->slave() : -1;
   const pid_t child = ::fork();
   if (child < 0) throw std::runtime_error("cannot fork");
   if (child == 0) {
     const int in = ::open(in_file.c_str(), O_RDONLY);
     ::dup2(in, STDIN_FILENO);
     ::close(in);
-    set_stream(STDERR_FILENO, options.err, err_file.c_str(), terminal.slave());
-    set_stream(STDOUT_FILENO, options.out, out_file.c_str(), terminal.slave());
+    set_stream(STDERR_FILENO, options.err, err_file.c_str(), slave);
+    set_stream(STDOUT_FILENO, options.out, out_file.c_str(), slave);
     if (options.largest_file > 0) {
       const rlimit limit{options.largest_file, options.largest_file};
       ::setrlimit(RLIMIT_FSIZE, &limit);
@@ -170,10 +174,9 @@ Outcome run(const Scratch& scratch, const std::vector<std::string>& arguments, c
     if (::chdir(scratch.path().c_str()) == 0) ::execve(line.argv[0], line.argv.data(), line.envp.data());
     ::_exit(127);
   }
-  terminal.hang_up();
+  if (terminal) terminal->hang_up();
   Outcome result;
-  const bool on_terminal = options.out == Output::Terminal || options.err == Output::Terminal;
-  const std::string seen = on_terminal ? terminal.read_to_end() : std::string{};
+  const std::string seen = terminal ? terminal->read_to_end() : std::string{};
   int wait_status = 0;
   ::waitpid(child, &wait_status, 0);
   result.status = status_from(wait_status);
@@ -182,6 +185,14 @@ Outcome run(const Scratch& scratch, const std::vector<std::string>& arguments, c
   if (options.err == Output::Captured) result.err = streams.read("err");
   if (options.err == Output::Terminal) result.err = seen;
   return result;
+}
+
+bool has_pseudo_terminals() {
+  const int master = ::posix_openpt(O_RDWR | O_NOCTTY | O_CLOEXEC);
+  if (master < 0) return false;
+  const bool usable = ::grantpt(master) == 0 && ::unlockpt(master) == 0;
+  ::close(master);
+  return usable;
 }
 
 int start(const Scratch& scratch, const std::vector<std::string>& arguments) {

@@ -58,6 +58,9 @@ class Scratch {
 [[nodiscard]] Outcome run(const Scratch& scratch, const std::vector<std::string>& arguments,
                           const RunOptions& options = {});
 
+/// Can Output::Terminal be had here? Some containers have none.
+[[nodiscard]] bool has_pseudo_terminals();
+
 /// Starts the program without waiting; returns its process id. Its output is thrown away.
 [[nodiscard]] int start(const Scratch& scratch, const std::vector<std::string>& arguments);
 
