@@ -98,7 +98,9 @@ Plan load_plan(const std::string& path) {
   }
 }
 
-Model load_model(const std::string& path) { return parse_model(read_text_file(path, kLargestModel), path); }
+std::string read_model_text(const std::string& path) { return read_text_file(path, kLargestModel); }
+
+Model load_model(const std::string& path) { return parse_model(read_model_text(path), path); }
 
 LoadedSpectra load_spectra(const std::vector<std::string>& patterns, const std::string& base,
                            std::optional<AxisUnit> axis, std::optional<Ordinate> ordinate) {

@@ -33,6 +33,9 @@ struct LoadedSet {
 /// Reads a plan file.
 [[nodiscard]] Plan load_plan(const std::string& path);
 
+/// The text of a model file, byte for byte.
+[[nodiscard]] std::string read_model_text(const std::string& path);
+
 /// Reads a model file.
 [[nodiscard]] Model load_model(const std::string& path);
 
@@ -42,8 +45,7 @@ struct LoadedSet {
 /// Spectra and reference values of one set; `base` is the folder its paths are relative to.
 [[nodiscard]] LoadedSet load_set(const SetFiles& files, const std::string& base, const Recipe& recipe);
 
-/// Spectra of the files that `patterns` stand for. Under Collect a file whose axis or ordinate
-/// contradicts `model` gives one refused record a spectrum.
+/// Spectra of the files that `patterns` stand for, all of them or none.
 [[nodiscard]] LoadedSpectra load_spectra(const std::vector<std::string>& patterns, const std::string& base,
                                          std::optional<AxisUnit> axis, std::optional<Ordinate> ordinate);
 

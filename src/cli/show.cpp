@@ -10,7 +10,6 @@
 #include "cli/outputs.hpp"
 #include "cli/text_table.hpp"
 #include "cli/version.hpp"
-#include "formats/files.hpp"
 #include "model/catalogue.hpp"
 #include "model/interval.hpp"
 #include "records/model_file.hpp"
@@ -18,8 +17,6 @@
 
 namespace bandwright::cli {
 namespace {
-
-constexpr std::size_t kLargestModel = std::size_t{1} << 30U;
 
 std::string window_text(const Window& window, const std::string& unit) {
   std::string text = fmt::format("{} {} to {}{}", printable(window.name), window.from, window.to, unit);
@@ -179,7 +176,7 @@ source for every number.
   [[nodiscard]] int run(const CommonOptions& common) override {
     if (plan_ && common.json) throw Error(ErrorKind::Usage, "--plan and --json exclude each other");
     check_out(common);
-    const std::string text = read_text_file(model_path_, kLargestModel);
+    const std::string text = read_model_text(model_path_);
     const Model model = parse_model(text, model_path_);
     const std::string digest = model_content_digest(text);
     const ResultHeader header{version_number(), model_path_};
