@@ -4,21 +4,9 @@
 #include <algorithm>
 #include <cmath>
 
-#include "base/error.hpp"
 #include "numerics/distributions.hpp"
 
 namespace bandwright {
-namespace {
-
-const ComponentRecipe& asked_for(const Recipe& recipe, const std::string& name) {
-  const auto found = std::find_if(recipe.components.begin(), recipe.components.end(),
-                                  [&](const ComponentRecipe& c) { return c.name == name; });
-  if (found == recipe.components.end())
-    throw Error(ErrorKind::Internal, "no recipe for component \"" + name + "\"");
-  return *found;
-}
-
-}  // namespace
 
 ErrorScale error_scale(const ComponentModel& component) {
   const CalibrationStatistics& s = component.statistics;
@@ -42,7 +30,7 @@ Uncertainty uncertainty_of(const ComponentModel& component, const Recipe& recipe
   double variance = (1.0 + leverage + of_mean) * scale.value * scale.value;
   Uncertainty out;
   if (recipe.interval.about == IntervalAbout::True) {
-    const double lab = reference_error(asked_for(recipe, component.name).lab_error, value);
+    const double lab = reference_error(recipe.component(component.name).lab_error, value);
     out.floored = variance < lab * lab;
     variance = std::max(0.0, variance - lab * lab);
   }

@@ -3,6 +3,8 @@
 
 #include <algorithm>
 
+#include "base/error.hpp"
+
 namespace bandwright {
 
 AcceptCriteria AcceptRecipe::for_component(std::string_view name) const {
@@ -14,6 +16,14 @@ AcceptCriteria AcceptRecipe::for_component(std::string_view name) const {
     if (own->criteria.*member) criteria.*member = own->criteria.*member;
   });
   return criteria;
+}
+
+const ComponentRecipe& Recipe::component(std::string_view name) const {
+  const auto found = std::find_if(components.begin(), components.end(),
+                                  [&](const ComponentRecipe& c) { return c.name == name; });
+  if (found == components.end())
+    throw Error(ErrorKind::Internal, "the recipe has no component \"" + std::string(name) + "\"");
+  return *found;
 }
 
 }  // namespace bandwright

@@ -230,6 +230,9 @@ struct Recipe {
   Decision decision;
   AcceptRecipe accept;
   Limits limits;
+
+  /// The component of that name. Throws Error(Internal) if the recipe has none.
+  [[nodiscard]] const ComponentRecipe& component(std::string_view name) const;
 };
 
 }  // namespace bandwright
